@@ -1,0 +1,103 @@
+import { standardErrorsIn95 } from '../numeric/estimate.js';
+import { varianceOf } from '../numeric/moments.js';
+import type { OuterSums } from './outer-paths.js';
+
+/** Counts of the pilot: enough for spreads to about 3%. */
+export const pilotOuterPathCount = 1024;
+export const pilotInnerPointCount = 32;
+
+const smallestOuterPathCount = 1024;
+const largestOuterPathCount = 4_000_000;
+const innerPointCounts = [8, 16, 32, 64, 128, 256, 512, 1024, 2048];
+
+/** Share of the wanted width that the plan aims at: the pilot's own figures are uncertain. */
+const aim = 0.85;
+
+/**
+ * Steps of outer and inner paths that a plan may ask for when nobody set a budget.
+ *
+ * A fixed count and not a time, so that the plan does not depend on the machine.
+ */
+export const defaultStepLimit = 400_000_000;
+
+/** What the pilot tells about a bracket made with any counts. */
+export interface PilotModel {
+  readonly lowerStandardDeviation: number;
+  readonly upperStandardDeviation: number;
+  /** Gap with endless inner points, and how much one over the inner count adds to it. */
+  readonly limitGap: number;
+  readonly gapPerInnerShare: number;
+  readonly value: number;
+}
+
+export interface Counts {
+  readonly outerPathCount: number;
+  readonly innerPointCount: number;
+}
+
+/** Reads spreads and gap off a pilot; inner noise is taken to raise the upper bound as one over the inner count. */
+export function modelOfPilot(sums: OuterSums, innerPointCount: number): PilotModel {
+  const halfCount = Math.ceil(innerPointCount / 2);
+  const slope = Math.max(0, sums.halfInner.mean - sums.upper.mean) / (1 / halfCount - 1 / innerPointCount);
+  return {
+    lowerStandardDeviation: Math.sqrt(varianceOf(sums.lower)),
+    upperStandardDeviation: Math.sqrt(varianceOf(sums.upper)),
+    limitGap: Math.max(0, sums.gap.mean - slope / innerPointCount),
+    gapPerInnerShare: slope,
+    value: (sums.lower.mean + sums.upper.mean) / 2,
+  };
+}
+
+/** Width of the bracket that counts are expected to give, in money. */
+export function expectedWidth(model: PilotModel, counts: Counts): number {
+  const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
+  return model.limitGap + model.gapPerInnerShare / counts.innerPointCount + noise / Math.sqrt(counts.outerPathCount);
+}
+
+export interface PlanRequest {
+  readonly wantedWidth: number;
+  /** Steps allowed, over all outer paths, dates and inner points. */
+  readonly stepLimit: number;
+  readonly dateCount: number;
+  /** Counts that the scenario fixes. */
+  readonly outerPathCount: number | null;
+  readonly innerPointCount: number | null;
+  /** Spend the whole limit instead of stopping at the wanted width. */
+  readonly spendAll: boolean;
+}
+
+/**
+ * The cheapest counts that are expected to reach the wanted width; where the gap or the limit forbids it, counts whose
+ * noise is small beside the gap.
+ */
+export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
+  const candidates = (request.innerPointCount === null ? innerPointCounts : [request.innerPointCount]).map(
+    (innerPointCount) => {
+      const affordable = Math.floor(request.stepLimit / (request.dateCount * (innerPointCount + 1)));
+      const wanted = request.spendAll ? affordable : outerPathsFor(model, innerPointCount, request.wantedWidth);
+      const outerPathCount =
+        request.outerPathCount ??
+        Math.min(largestOuterPathCount, Math.max(smallestOuterPathCount, Math.min(affordable, wanted)));
+      const counts = { outerPathCount, innerPointCount };
+      return { counts, width: expectedWidth(model, counts), work: outerPathCount * (innerPointCount + 1) };
+    },
+  );
+  const reaching = request.spendAll
+    ? []
+    : candidates.filter(({ width }) => width <= request.wantedWidth * (aim + 1e-9));
+  const best = reaching.length > 0 ? least(reaching, ({ work }) => work) : least(candidates, ({ width }) => width);
+  return best.counts;
+}
+
+/** Outer paths that bring the noise down to what the gap leaves of the aim, or to a quarter of a gap that is too wide. */
+function outerPathsFor(model: PilotModel, innerPointCount: number, wantedWidth: number): number {
+  const gap = model.limitGap + model.gapPerInnerShare / innerPointCount;
+  const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
+  const room = Math.max(aim * wantedWidth - gap, gap / 4);
+  if (noise === 0) return smallestOuterPathCount;
+  return Math.ceil((noise / room) ** 2);
+}
+
+function least<T>(items: readonly T[], by: (item: T) => number): T {
+  return items.reduce((best, item) => (by(item) < by(best) ? item : best));
+}

@@ -1,0 +1,102 @@
+import { mistake } from '../messages/build.js';
+import type { Message } from '../messages/message.js';
+import { nearest } from '../messages/nearest.js';
+import { listed } from '../messages/printable.js';
+import type { Overrides } from '../run/options.js';
+
+/** A value read from the command line, or what is wrong with it. */
+export type Parsed<T> = { readonly value: T } | { readonly mistake: Message };
+
+type UpperMethod = NonNullable<Overrides['upper']>;
+
+/** The ways to make the martingale bound that `--upper` takes. */
+export const UPPER_METHODS: readonly UpperMethod[] = ['one-step', 'andersen-broadie', 'regressed'];
+
+const MOST_WORKERS = 512;
+const SECONDS_PER: Readonly<Record<string, number>> = { s: 1, m: 60, h: 3600 };
+const MOST_SECONDS = 7 * 24 * 3600;
+const POSITIVE_NUMBER = /^(\d+(\.\d*)?|\.\d+)(e[+-]?\d+)?$/i;
+
+function wrong(what: string, why: string, mend: string, evidence: Record<string, unknown>): { mistake: Message } {
+  return { mistake: mistake('command-line', { what, why, mend, evidence }) };
+}
+
+/**
+ * Reads `--with NAME=EXPRESSION`, parted at the first equals sign. Whether the name exists and the expression is sound
+ * is judged with the scenario.
+ */
+export function parseWith(texts: readonly string[]): Parsed<Readonly<Record<string, string>>> {
+  const entries = new Map<string, string>();
+  for (const text of texts) {
+    const parting = text.indexOf('=');
+    const name = text.slice(0, Math.max(0, parting)).trim();
+    const expression = text.slice(parting + 1).trim();
+    if (parting < 0 || name === '' || expression === '') {
+      const mend = 'Write it as in --with spread=0.25, with quotes around it if it holds spaces or brackets.';
+      return wrong(
+        `--with ${text} is not of the form NAME=EXPRESSION.`,
+        'A constant needs a name and a new value.',
+        mend,
+        { text },
+      );
+    }
+    if (entries.has(name)) {
+      return wrong(`--with names ${name} twice.`, 'Only one value can hold.', 'Leave one of the two out.', { name });
+    }
+    entries.set(name, expression);
+  }
+  return { value: Object.fromEntries(entries) };
+}
+
+/** Reads `--width`: a share of the value such as `0.1%`, or an amount of money such as `0.02`. */
+export function parseWidth(text: string): Parsed<string> {
+  const trimmed = text.trim();
+  const digits = trimmed.endsWith('%') ? trimmed.slice(0, -1).trimEnd() : trimmed;
+  const amount = Number(digits);
+  if (!POSITIVE_NUMBER.test(digits) || !Number.isFinite(amount) || amount <= 0) {
+    const mend = 'Write --width 0.1% for a share of the value, or --width 0.02 for an amount of money.';
+    return wrong(`--width ${text} is no width.`, 'A bracket is as wide as a positive number says.', mend, { text });
+  }
+  return { value: trimmed.endsWith('%') ? `${digits}%` : digits };
+}
+
+/** Reads `--budget`: a number with `s`, `m` or `h` behind it, as seconds. */
+export function parseBudget(text: string): Parsed<number> {
+  const found = /^(.*?)\s*([smh])?$/.exec(text.trim());
+  const digits = found?.[1] ?? '';
+  const unit = found?.[2];
+  const mend = 'Write --budget 30s, --budget 2m or --budget 1h.';
+  if (!POSITIVE_NUMBER.test(digits)) {
+    return wrong(`--budget ${text} is no length of time.`, 'The run is planned to take about that long.', mend, {
+      text,
+    });
+  }
+  if (unit === undefined) {
+    return wrong(`--budget ${text} has no unit.`, 'It could mean seconds or minutes.', mend, { text });
+  }
+  const seconds = Number(digits) * SECONDS_PER[unit]!;
+  if (!(seconds > 0 && seconds <= MOST_SECONDS)) {
+    return wrong(`--budget ${text} is out of range.`, 'A run can be planned for up to seven days.', mend, { seconds });
+  }
+  return { value: seconds };
+}
+
+/** Reads `--workers`: how many threads; 0 computes without any. */
+export function parseWorkers(text: string): Parsed<number> {
+  const count = Number(text);
+  if (!/^\d+$/.test(text.trim()) || count > MOST_WORKERS) {
+    const why = `The number of threads is a whole number from 0 (none beside the main one) to ${MOST_WORKERS}.`;
+    return wrong(`--workers ${text} is no number of threads.`, why, 'Write --workers 2.', { text });
+  }
+  return { value: count };
+}
+
+/** Reads `--upper`: how the martingale bound is made. */
+export function parseUpper(text: string): Parsed<UpperMethod> {
+  const found = UPPER_METHODS.find((method) => method === text.trim());
+  if (found !== undefined) return { value: found };
+  const near = nearest(text, UPPER_METHODS);
+  const mend = near.length > 0 ? `Did you mean ${listed(near, 'or')}?` : `Write --upper ${UPPER_METHODS[0]}.`;
+  const why = `The bound can be made by ${listed(UPPER_METHODS, 'or')}.`;
+  return wrong(`--upper ${text} is no method.`, why, mend, { text });
+}

@@ -1,0 +1,30 @@
+import { checkScenario } from './run/check.js';
+import type { CheckOutcome, Overrides, ValueOptions, ValueOutcome } from './run/options.js';
+import { valueScenario } from './run/value.js';
+import { thisMachine } from './workers/machine.js';
+
+export type { Message, Place, Severity } from './messages/message.js';
+export { renderMessages } from './messages/render.js';
+export type { BoundEstimate, Estimate, Forecast, Plan, RunRecord } from './result/record.js';
+export type { CheckOutcome, Overrides, Progress, ValueOptions, ValueOutcome } from './run/options.js';
+export type { CheckedScenario, Setting } from './scenario/model.js';
+
+/**
+ * Values a scenario and gives the record that `tarry value --json` prints.
+ *
+ * A scenario with mistakes is not an exception: the outcome then carries the messages.
+ *
+ * @param scenario the text of a scenario file, or the same as a plain object
+ * @fails throws only for a defect of this package
+ * @example
+ * const outcome = await value({ drivers: { … }, contract: { … } }, { seed: 'oak', workers: 2 });
+ * if (outcome.kind === 'delivered') console.log(outcome.record.bracket95);
+ */
+export function value(scenario: string | object, options: ValueOptions = {}): Promise<ValueOutcome> {
+  return valueScenario(scenario, options, thisMachine());
+}
+
+/** Checks a scenario, echoes its settings and forecasts memory and work, without drawing a path. */
+export async function check(scenario: string | object, options: Overrides = {}): Promise<CheckOutcome> {
+  return checkScenario(scenario, options, thisMachine());
+}

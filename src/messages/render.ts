@@ -1,0 +1,53 @@
+import { excerpt } from './excerpt.js';
+import type { Message } from './message.js';
+import { printable } from './printable.js';
+
+/** Dresses a piece of text for its role: `place`, `mistake`, `advice`, `code`, `source`, `caret`, `label`, `mend`. */
+export type MessageStyle = (role: string, text: string) => string;
+
+const bare: MessageStyle = (_role, text) => text;
+
+/**
+ * Messages as text for people, in the order given, a blank line between two.
+ *
+ * @example
+ * // lots.yaml:12:18  mistake  unknown-name
+ * //   `strik` is not a name of this scenario.
+ * //
+ * //     payoff: max(0, strik - price)
+ * //                    ^^^^^
+ * //   Why:  …
+ * //   Mend: …
+ */
+export function renderMessages(messages: readonly Message[], style: MessageStyle = bare): string {
+  return messages.map((message) => renderMessage(message, style)).join('\n');
+}
+
+function renderMessage(message: Message, style: MessageStyle): string {
+  const { code, severity, place, what, why, mend } = message;
+  const position = place === null ? [] : [style('place', `${printable(place.file)}:${place.line}:${place.column}`)];
+  const lines = [
+    [...position, style(severity, severity), style('code', code)].join('  '),
+    `  ${block(what, 2)}`,
+    ...source(message, style),
+    `  ${style('label', 'Why: ')} ${block(why, 8)}`,
+    `  ${style('label', 'Mend:')} ${style('mend', block(mend, 8))}`,
+  ];
+  return `${lines.join('\n')}\n`;
+}
+
+/** Texts of ours may have several lines (a piece of a scenario to copy); texts from outside never keep theirs. */
+function block(text: string, indent: number): string {
+  return text
+    .split('\n')
+    .map(printable)
+    .join(`\n${' '.repeat(indent)}`);
+}
+
+function source({ place, sourceLine }: Message, style: MessageStyle): string[] {
+  if (place === null || sourceLine === null || sourceLine.trim() === '') return [];
+  const { text, underline } = excerpt(sourceLine, place.column, place.length);
+  const indent = text.length - text.trimStart().length;
+  const spare = Math.min(indent, underline.length - underline.trimStart().length);
+  return ['', `    ${style('source', text.slice(spare))}`, `    ${style('caret', underline.slice(spare))}`];
+}

@@ -1,0 +1,47 @@
+/** Count, mean and sum of squared deviations of a sample: enough for a mean with its standard error. */
+export interface Moments {
+  readonly count: number;
+  readonly mean: number;
+  /** Σ (x - mean)² */
+  readonly squares: number;
+}
+
+export const noMoments: Moments = { count: 0, mean: 0, squares: 0 };
+
+/** Moments of `values[offset … offset + count - 1]` by two passes, in rising order. */
+export function momentsOf(values: Float64Array, offset: number, count: number): Moments {
+  if (count === 0) return noMoments;
+  let sum = 0;
+  for (let i = offset; i < offset + count; i++) sum += values[i]!;
+  const mean = sum / count;
+  let squares = 0;
+  for (let i = offset; i < offset + count; i++) squares += (values[i]! - mean) * (values[i]! - mean);
+  return { count, mean, squares };
+}
+
+/**
+ * Moments of two samples together; not associative to the last bit, so merge in a fixed order.
+ *
+ * @source Chan, Golub & LeVeque (1983), American Statistician 37, 242-247
+ */
+export function mergeMoments(a: Moments, b: Moments): Moments {
+  if (a.count === 0) return b;
+  if (b.count === 0) return a;
+  const count = a.count + b.count;
+  const difference = b.mean - a.mean;
+  return {
+    count,
+    mean: a.mean + (difference * b.count) / count,
+    squares: a.squares + b.squares + (difference * difference * a.count * b.count) / count,
+  };
+}
+
+/** Unbiased sample variance; 0 for a sample of one. */
+export function varianceOf(moments: Moments): number {
+  return moments.count > 1 ? moments.squares / (moments.count - 1) : 0;
+}
+
+/** Standard error of the mean; null for a sample of fewer than two, whose error is unknown. */
+export function standardErrorOf(moments: Moments): number | null {
+  return moments.count > 1 ? Math.sqrt(varianceOf(moments) / moments.count) : null;
+}

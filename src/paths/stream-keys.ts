@@ -1,0 +1,20 @@
+import seedrandom from 'seedrandom';
+import type { StreamKey } from '../program/stream.js';
+
+/**
+ * What a set of draws is for. Paths of one purpose never serve another: a rule valued on the paths that made it would
+ * look better than it is.
+ */
+export type Purpose = 'fit' | 'pilot' | 'pilot inner' | 'outer' | 'inner' | 'nested outer' | 'nested inner';
+
+/**
+ * The key of the stream for one purpose and one innovation.
+ *
+ * The innovation's name and not its number is part of the key, so that adding a driver shifts no other draw.
+ *
+ * @source the ARC4 generator of the seedrandom package, keyed with the whole text
+ */
+export function streamKey(seed: string, purpose: Purpose, innovationName: string): StreamKey {
+  const generator = seedrandom(JSON.stringify([seed, purpose, innovationName]));
+  return { low: generator.int32() >>> 0, high: generator.int32() >>> 0 };
+}

@@ -1,0 +1,68 @@
+import { printable } from '../messages/printable.js';
+import type { RunRecord } from '../result/record.js';
+import { methodWords } from './bracket-text.js';
+import { counted, decimalsFor, duration, fixed, grouped, percent } from './numbers.js';
+import { paragraph } from './prose.js';
+
+/** The counts the run was made with, and what the pilot expected of them. */
+export function planText(record: RunRecord, width: number): string {
+  const { plan, pilot } = record;
+  const sentences = [
+    `${counted(plan.fitPathCount, 'path')} fit the rule.`,
+    `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with ${counted(plan.innerPointCount, 'point')} of one step at every path and date.`,
+  ];
+  if (plan.nestedOuterPathCount > 0) {
+    sentences.push(
+      `${counted(plan.nestedOuterPathCount, 'path')} of their own carry the Andersen-Broadie bound, with ${counted(plan.nestedInnerPathCount, 'inner path')} each time one is needed.`,
+    );
+  }
+  const bracketBound = record.decidedBy === 'holder' ? 'upper' : 'lower';
+  sentences.push(`The bracket's ${bracketBound} end comes from: ${methodWords(plan.upper)}.`);
+  if (pilot === null) {
+    sentences.push('Every count was given; there was no pilot.');
+  } else {
+    const decimals = decimalsFor(Math.min(pilot.expectedWidth, pilot.wantedWidth));
+    const money = printable(record.scenario.money);
+    const reached = record.bracket95.high - record.bracket95.low;
+    sentences.push(
+      `The pilot (${counted(pilot.outerPathCount, 'path')}) expected a bracket ${fixed(pilot.expectedWidth, decimals)} ${money} wide where ${fixed(pilot.wantedWidth, decimals)} was wanted; it became ${fixed(reached, decimals)}.`,
+    );
+  }
+  return paragraph(sentences.join(' '), width);
+}
+
+/** The regression behind the rule: how many columns there were, stayed, and how much they explain. */
+export function basisText(record: RunRecord, width: number): string {
+  const columnCount = record.basis.columns.length;
+  const sentences = [
+    `${counted(columnCount, 'column')} in the regression, ${counted(record.basis.martingalePolynomials.length, 'polynomial')} in the martingale.`,
+  ];
+  // The last date has no continuation and so no fit.
+  const fits = record.dates.filter((date) => date.keptColumnCount > 0);
+  const kept = fits.map((date) => date.keptColumnCount);
+  if (kept.length > 0) {
+    const fewest = Math.min(...kept);
+    const most = Math.max(...kept);
+    sentences.push(
+      fewest === most
+        ? `Kept at every date: ${grouped(most)}.`
+        : `Kept: ${grouped(fewest)} to ${grouped(most)}, by date.`,
+    );
+  }
+  const explained = fits.flatMap((date) => (date.explainedShare === null ? [] : [date.explainedShare]));
+  if (explained.length > 0) {
+    sentences.push(
+      `The columns explain ${percent(Math.min(...explained))} to ${percent(Math.max(...explained))} of the variance, by date.`,
+    );
+  }
+  return paragraph(sentences.join(' '), width);
+}
+
+/** Where the wall time went. */
+export function timingText(record: RunRecord, width: number): string {
+  const { totalSeconds, fitSeconds, pilotSeconds, boundsSeconds } = record.timing;
+  return paragraph(
+    `${duration(totalSeconds)} in all: fit ${duration(fitSeconds)}, pilot ${duration(pilotSeconds)}, bounds ${duration(boundsSeconds)}.`,
+    width,
+  );
+}

@@ -1,0 +1,148 @@
+import { advice } from '../messages/build.js';
+import type { Message } from '../messages/message.js';
+import type { BoundEstimate, DateFinding, Estimate, Plan } from './record.js';
+
+/** The measures of a finished run that may cast doubt on it. */
+export interface Measures {
+  readonly plan: Plan;
+  readonly columnCount: number;
+  readonly basisIsAutomatic: boolean;
+  readonly dates: readonly DateFinding[];
+  readonly lower: BoundEstimate;
+  readonly upper: BoundEstimate;
+  readonly uppers: readonly BoundEstimate[];
+  /** Martingale bound and rule of one set of paths, in the decider's sign: the first cannot fall below the second. */
+  readonly gap: Estimate;
+  readonly bracketWidth: number;
+  /** Null when fixed counts were asked for instead of a width. */
+  readonly wantedWidth: number | null;
+  readonly decidedBy: 'holder' | 'issuer';
+}
+
+/** What the judge says: doubts, each with its number, and the checks that found nothing. */
+export interface Judgement {
+  readonly advice: readonly Message[];
+  readonly passedChecks: readonly string[];
+}
+
+const paths = (count: number) => count.toLocaleString('en-US');
+const percent = (share: number) => `${(100 * share).toPrecision(2)}%`;
+
+/** Fit paths for each column below which the regression error alone is a visible part of the gap; common practice. */
+const fitPathsPerColumn = 100;
+/** Gap, as a share of the value, beyond which a better basis is worth more than more paths; common practice. */
+const wideGapShare = 0.01;
+/** Outer paths below which the normal interval is not to be trusted; common practice. */
+const fewestOuterPaths = 500;
+const fewestInnerPoints = 8;
+/** Standard errors between crossed bounds that noise does not explain: about one false alarm in 15,000 runs. */
+const crossingErrors = 4;
+
+type Finding = { readonly doubt: Message } | { readonly passed: string };
+
+/** Judges a finished run. */
+export function judge(measures: Measures): Judgement {
+  const findings = [thinFit, rankLoss, wideGap, crossedBounds, effort, width]
+    .map((question) => question(measures))
+    .filter((found) => found !== null);
+  return {
+    advice: findings.flatMap((finding) => ('doubt' in finding ? [finding.doubt] : [])),
+    passedChecks: findings.flatMap((finding) => ('passed' in finding ? [finding.passed] : [])),
+  };
+}
+
+function thinFit({ plan, columnCount }: Measures): Finding {
+  const share = plan.fitPathCount / columnCount;
+  if (share >= fitPathsPerColumn) return { passed: `The fit has ${paths(Math.floor(share))} paths for each column.` };
+  return {
+    doubt: advice('thin-fit', {
+      what: `The rule was fitted with ${paths(plan.fitPathCount)} paths for ${columnCount} columns: ${Math.floor(share)} for each.`,
+      why: `Below ${fitPathsPerColumn} paths for each column the coefficients follow noise, the rule loses value and the bracket widens; it stays valid.`,
+      mend: `Raise \`counts: { fit: … }\` under method to ${paths(fitPathsPerColumn * columnCount)} or more, or state fewer columns.`,
+      evidence: { fitPathCount: plan.fitPathCount, columnCount },
+    }),
+  };
+}
+
+function rankLoss({ basisIsAutomatic, dates }: Measures): Finding | null {
+  if (basisIsAutomatic) return null;
+  const losing = dates.filter(({ time, droppedColumns }) => time > 0 && droppedColumns.length > 0);
+  if (losing.length === 0) return { passed: 'No column of the basis repeats the others at any decision date.' };
+  const names = [...new Set(losing.flatMap(({ droppedColumns }) => droppedColumns))];
+  return {
+    doubt: advice('rank-loss', {
+      what: `At ${losing.length} of ${dates.filter(({ time }) => time > 0).length} dates the regression dropped columns that the others already span: ${names.join(', ')}.`,
+      why: 'The fit is the same without them; but a column that was meant to tell something new does not.',
+      mend: 'Look at these columns of `basis`; take out what repeats, or state what was meant.',
+      evidence: { columns: names, dates: losing.map(({ time }) => time) },
+    }),
+  };
+}
+
+function wideGap({ gap, lower }: Measures): Finding {
+  const share = gap.value / Math.abs(lower.value);
+  const text = `The gap between the bounds is ${percent(share)} of the value.`;
+  if (!(share > wideGapShare)) return { passed: text };
+  return {
+    doubt: advice('wide-gap', {
+      what: text,
+      why: 'The gap is what the fitted rule and martingale miss. More outer paths do not close it.',
+      mend: 'Use `basis: auto` or add columns that tell when holding is worth more; raise `counts: { fit: …, inner: … }` under method.',
+      evidence: { gap: gap.value, share },
+    }),
+  };
+}
+
+function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
+  const ruled = decidedBy === 'holder' ? lower : upper;
+  const ordered = (bound: BoundEstimate) =>
+    decidedBy === 'holder' ? ruled.value - bound.value : bound.value - ruled.value;
+  const crossed = uppers.filter((bound) => ordered(bound) > crossingErrors * jointError(bound, ruled));
+  if (crossed.length === 0) return { passed: 'No bound crosses another beyond noise.' };
+  return {
+    doubt: advice('crossed-bounds', {
+      what: `The lower bound lies above the upper bound by more than ${crossingErrors} standard errors (${crossed.map(({ method }) => method).join(', ')}).`,
+      why: 'Noise does not explain this: the estimates contradict each other and the bracket must not be used.',
+      mend: 'Run again with another `seed`. If it stays, this is a defect of the program: keep the scenario and the record, and report it.',
+      evidence: { lower: lower.value, uppers: uppers.map(({ method, value }) => ({ method, value })) },
+    }),
+  };
+}
+
+/** Standard error of a difference of two estimates, taken as independent. */
+function jointError(a: Estimate, b: Estimate): number {
+  return Math.sqrt((a.standardError ?? 0) ** 2 + (b.standardError ?? 0) ** 2);
+}
+
+function effort({ plan, lower, upper }: Measures): Finding {
+  const smallest = Math.min(lower.pathCount, upper.pathCount);
+  const enough = smallest >= fewestOuterPaths && plan.innerPointCount >= fewestInnerPoints;
+  if (enough) return { passed: `The error bars rest on ${paths(smallest)} paths or more.` };
+  return {
+    doubt: advice('effort-too-small', {
+      what: `The bounds rest on ${paths(smallest)} outer paths with ${plan.innerPointCount} inner points each.`,
+      why: `Below ${fewestOuterPaths} paths a 95% interval may cover less than 95%; below ${fewestInnerPoints} inner points the upper bound is mostly noise.`,
+      mend: 'Leave `counts` under method out, so that a pilot chooses them, or raise `outer` and `inner`.',
+      evidence: { outerPathCount: smallest, innerPointCount: plan.innerPointCount },
+    }),
+  };
+}
+
+function width({ bracketWidth, wantedWidth, gap, lower, upper }: Measures): Finding | null {
+  if (wantedWidth === null) return null;
+  const figures = `${bracketWidth.toPrecision(3)} where ${wantedWidth.toPrecision(3)} was wanted`;
+  if (bracketWidth <= wantedWidth) return { passed: `The bracket is as narrow as wanted: ${figures}.` };
+  const noise = (lower.halfWidth95 ?? 0) + (upper.halfWidth95 ?? 0);
+  const stuck = gap.value > noise ? 'the gap between the bounds' : 'the noise of the estimates';
+  return {
+    doubt: advice('width-missed', {
+      what: `The bracket is ${figures}; most of it is ${stuck} (gap ${gap.value.toPrecision(2)}, noise ${noise.toPrecision(2)}).`,
+      why: 'The bracket is valid as it stands; it was not drawn again until it looked narrow, since that would make it too often wrong.',
+      mend:
+        gap.value > noise
+          ? 'Improve `basis`, or raise `counts: { fit: …, inner: … }` under method.'
+          : 'Ask for the same `bracket width` with a larger --budget, or raise `counts: { outer: … }` under method.',
+      evidence: { bracketWidth, wantedWidth, gap: gap.value, noise },
+    }),
+  };
+}

@@ -1,0 +1,110 @@
+import type { Message } from '../messages/message.js';
+import type { CheckedModel, Setting, UpperMethod } from '../scenario/model.js';
+
+export type BoundMethod = 'rule' | UpperMethod | 'two-level';
+
+/** A mean over independent paths, in money of today. */
+export interface Estimate {
+  readonly value: number;
+  readonly standardError: number | null;
+  /** Half-width of the 95% interval of the estimate: 1.96 standard errors. */
+  readonly halfWidth95: number | null;
+}
+
+export interface BoundEstimate extends Estimate {
+  readonly pathCount: number;
+  readonly method: BoundMethod;
+}
+
+/**
+ * The integer counts of a run, fixed before its final draws; replaying a plan with the same seed gives the same bits.
+ */
+export interface Plan {
+  readonly fitPathCount: number;
+  /** Paths that carry both bounds; a multiple of nothing, the last block may be short. */
+  readonly outerPathCount: number;
+  /** Points of one step drawn for every outer path and date. */
+  readonly innerPointCount: number;
+  /** Counts of the Andersen-Broadie upper bound; 0 when it is not computed. */
+  readonly nestedOuterPathCount: number;
+  readonly nestedInnerPathCount: number;
+  /** Which upper bound enters the bracket. */
+  readonly upper: UpperMethod;
+}
+
+/** What the pilot saw, and from which the plan was made; null when every count was given. */
+export interface PilotFinding {
+  readonly outerPathCount: number;
+  readonly innerPointCount: number;
+  readonly lowerStandardDeviation: number;
+  readonly upperStandardDeviation: number;
+  readonly gap: number;
+  /** Width of the bracket that the plan is expected to reach, in money. */
+  readonly expectedWidth: number;
+  readonly wantedWidth: number;
+}
+
+/** The fitted rule at one date, as far as a reader needs it. */
+export interface DateFinding {
+  readonly time: number;
+  readonly exerciseShare: number;
+  /** Columns kept in the regression. */
+  readonly keptColumnCount: number;
+  readonly droppedColumns: readonly string[];
+  /** Share of the response's variance that the basis explains. */
+  readonly explainedShare: number | null;
+  /** Mean worth of holding past this date over the fit's paths, in money of today; null at the last date. */
+  readonly continuationMean: number | null;
+}
+
+export interface RunRecord {
+  readonly schemaVersion: 1;
+  readonly status: 'complete' | 'stopped';
+  readonly scenario: {
+    readonly path: string | null;
+    readonly sha256: string;
+    readonly title: string;
+    readonly money: string;
+  };
+  readonly seed: string;
+  readonly decidedBy: CheckedModel['contract']['decidedBy'];
+  readonly plan: Plan;
+  readonly pilot: PilotFinding | null;
+  readonly lower: BoundEstimate;
+  readonly upper: BoundEstimate;
+  /** Every upper bound (for an issuer: every martingale bound) that was computed, the bracket's own among them. */
+  readonly uppers: readonly BoundEstimate[];
+  readonly gap: Estimate;
+  readonly bracket95: { readonly low: number; readonly high: number };
+  readonly stepBias: null;
+  readonly exact: null;
+  readonly basis: { readonly columns: readonly string[]; readonly martingalePolynomials: readonly string[] };
+  readonly dates: readonly DateFinding[];
+  /** Share of paths on which the right is never used. */
+  readonly neverExercisedShare: number;
+  readonly exerciseTimeQuantiles: { readonly p05: number; readonly p50: number; readonly p95: number } | null;
+  /** Findings that doubt the result, each with its number. */
+  readonly advice: readonly Message[];
+  /** Checks that ran and found nothing, in words. */
+  readonly passedChecks: readonly string[];
+  readonly settings: readonly Setting[];
+  readonly timing: {
+    readonly totalSeconds: number;
+    readonly fitSeconds: number;
+    readonly pilotSeconds: number;
+    readonly boundsSeconds: number;
+  };
+  readonly versions: { readonly tarry: string; readonly node: string };
+}
+
+/** What a run will need, said before it starts. */
+export interface Forecast {
+  /** Bytes resident at the peak, all threads together. */
+  readonly peakMemoryBytes: number;
+  readonly machineMemoryBytes: number | null;
+  /** Counted in path-dates: one path moved by one date and its basis evaluated. */
+  readonly work: { readonly fit: number; readonly bounds: number | null; readonly nested: number | null };
+  /** Columns of the regression and polynomials of the martingale. */
+  readonly columnCount: number;
+  readonly polynomialCount: number;
+}

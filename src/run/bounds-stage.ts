@@ -1,0 +1,59 @@
+import { mergeNestedSums, type NestedSums, noNestedSums } from '../bounds/nested-paths.js';
+import { mergeOuterSums, noOuterSums, type OuterPurpose, type OuterSums } from '../bounds/outer-paths.js';
+import type { Programs } from '../rule/programs.js';
+import type { Executor } from '../workers/executor.js';
+import type { Progress } from './options.js';
+import { cutIntoParcels, runParcels } from './parcels.js';
+
+/** Sums of a stage and whether all of its paths are in them. */
+export interface StageSums<S> {
+  readonly sums: S;
+  readonly isComplete: boolean;
+}
+
+/** Steps of one block that a parcel should at least hold, so that messages stay small beside the work. */
+const smallestParcelSteps = 256;
+
+/** Values the outer paths with both bounds. */
+export async function runOuter(
+  executor: Executor,
+  programs: Programs,
+  purpose: OuterPurpose,
+  counts: { readonly outerPathCount: number; readonly innerPointCount: number },
+  signal: AbortSignal | undefined,
+  onProgress: (progress: Progress) => void,
+): Promise<StageSums<OuterSums>> {
+  const dateCount = programs.times.length - 1;
+  const blocksPerParcel = Math.max(1, Math.floor(smallestParcelSteps / (dateCount * (counts.innerPointCount + 1))));
+  const jobs = cutIntoParcels(counts.outerPathCount, blocksPerParcel).map((range) => ({
+    kind: 'outer' as const,
+    purpose,
+    pathCount: counts.outerPathCount,
+    innerPointCount: counts.innerPointCount,
+    range,
+  }));
+  const stage = purpose === 'pilot' ? 'pilot' : 'bounds';
+  const { results, isComplete } = await runParcels(executor, jobs, signal, (done) =>
+    onProgress({ stage, done, total: jobs.length }),
+  );
+  return { sums: results.reduce(mergeOuterSums, noOuterSums(programs.times.length)), isComplete };
+}
+
+/** Values the outer paths of the nested upper bound. */
+export async function runNested(
+  executor: Executor,
+  counts: { readonly nestedOuterPathCount: number; readonly nestedInnerPathCount: number },
+  signal: AbortSignal | undefined,
+  onProgress: (progress: Progress) => void,
+): Promise<StageSums<NestedSums>> {
+  const jobs = cutIntoParcels(counts.nestedOuterPathCount, 1).map((range) => ({
+    kind: 'nested' as const,
+    pathCount: counts.nestedOuterPathCount,
+    innerPathCount: counts.nestedInnerPathCount,
+    range,
+  }));
+  const { results, isComplete } = await runParcels(executor, jobs, signal, (done) =>
+    onProgress({ stage: 'nested', done, total: jobs.length }),
+  );
+  return { sums: results.reduce(mergeNestedSums, noNestedSums), isComplete };
+}

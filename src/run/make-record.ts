@@ -1,0 +1,127 @@
+import { quantileSorted } from 'simple-statistics';
+import { type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
+import type { NestedSums } from '../bounds/nested-paths.js';
+import type { OuterSums } from '../bounds/outer-paths.js';
+import { estimateOf } from '../numeric/estimate.js';
+import { judge } from '../result/advice.js';
+import type { BoundEstimate, BoundMethod, DateFinding, PilotFinding, Plan, RunRecord } from '../result/record.js';
+import type { StepFit } from '../rule/backward-induction.js';
+import type { Programs } from '../rule/programs.js';
+import type { CheckedScenario } from '../scenario/model.js';
+
+/** Everything that a finished run measured. */
+export interface RunFindings {
+  readonly source: string | object;
+  readonly path: string | null;
+  readonly scenario: CheckedScenario;
+  readonly programs: Programs;
+  readonly plan: Plan;
+  readonly pilot: PilotFinding | null;
+  readonly fits: readonly StepFit[];
+  readonly outer: OuterSums;
+  /** Null when the nested bound was not asked for, or when the run was stopped before it. */
+  readonly nested: NestedSums | null;
+  readonly isComplete: boolean;
+  readonly hashOf: (text: string) => string;
+  readonly versions: RunRecord['versions'];
+  readonly timing: RunRecord['timing'];
+}
+
+/** Turns measurements into the record: the decider's signs become the holder's, and the result is judged. */
+export function makeRecord(findings: RunFindings): RunRecord {
+  const { source, path, scenario, programs, plan, pilot, outer, nested, isComplete } = findings;
+  const { model, settings } = scenario;
+  const { sign } = programs;
+  const named = (bound: Bound, method: BoundMethod): BoundEstimate => ({ ...bound, method });
+  const ruled = named(boundOf(outer.lower, sign), 'rule');
+  const martingales = [
+    named(boundOf(outer.upper, sign), 'one-step'),
+    ...(nested === null ? [] : [named(boundOf(nested.upper, sign), 'andersen-broadie')]),
+    named(boundOf(outer.regressed, sign), 'regressed'),
+  ];
+  const chosen = martingales.find(({ method }) => method === plan.upper) ?? martingales[0]!;
+  const [lower, upper] = sign === 1 ? [ruled, chosen] : [chosen, ruled];
+  const bracket95 = bracketOf(lower, upper);
+  const dates = dateFindings(findings);
+  const gap = estimateOf(outer.gap);
+  const basisIsAutomatic = model.method.basis === 'auto';
+  const wantedWidth = wantedWidthOf(findings);
+  const judgement = judge({
+    plan,
+    columnCount: programs.columns.length,
+    basisIsAutomatic,
+    dates,
+    lower,
+    upper,
+    uppers: martingales,
+    gap:
+      chosen.method === 'one-step' ? gap : { value: upper.value - lower.value, standardError: null, halfWidth95: null },
+    bracketWidth: bracket95.high - bracket95.low,
+    wantedWidth,
+    decidedBy: model.contract.decidedBy,
+  });
+  const text = typeof source === 'string' ? source : JSON.stringify(source);
+  return {
+    schemaVersion: 1,
+    status: isComplete ? 'complete' : 'stopped',
+    scenario: { path, sha256: findings.hashOf(text), title: model.title, money: model.money },
+    seed: model.seed,
+    decidedBy: model.contract.decidedBy,
+    plan,
+    pilot,
+    lower,
+    upper,
+    uppers: martingales,
+    gap,
+    bracket95,
+    stepBias: null,
+    exact: null,
+    basis: { columns: programs.columns.map(({ name }) => name), martingalePolynomials: programs.polynomialNames },
+    dates,
+    neverExercisedShare: outer.neverCount / outer.lower.count,
+    exerciseTimeQuantiles: exerciseTimeQuantiles(outer, programs),
+    advice: judgement.advice,
+    passedChecks: judgement.passedChecks,
+    settings,
+    timing: findings.timing,
+    versions: findings.versions,
+  };
+}
+
+function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
+  const { times, todayIsDecisionDate, columns, sign } = programs;
+  const last = times.length - 1;
+  return times.flatMap((time, date) => {
+    if (date === 0 && !todayIsDecisionDate) return [];
+    const exerciseShare = outer.exerciseCounts[date]! / outer.lower.count;
+    const fit = date === last ? undefined : fits[date];
+    return {
+      time,
+      exerciseShare,
+      keptColumnCount: fit?.kept.length ?? 0,
+      droppedColumns: fit?.dropped.map((column) => columns[column]!.name) ?? [],
+      explainedShare: fit?.explainedShare ?? null,
+      continuationMean: fit === undefined ? null : sign * fit.continuationMean,
+    };
+  });
+}
+
+/** Quantiles of the exercise time among the paths that exercise at all; null if none does. */
+function exerciseTimeQuantiles(outer: OuterSums, { times }: Programs): RunRecord['exerciseTimeQuantiles'] {
+  const exercised = outer.exerciseCounts.flatMap((count, date) => new Array<number>(count).fill(times[date]!));
+  if (exercised.length === 0) return null;
+  return {
+    p05: quantileSorted(exercised, 0.05),
+    p50: quantileSorted(exercised, 0.5),
+    p95: quantileSorted(exercised, 0.95),
+  };
+}
+
+function wantedWidthOf({ scenario, pilot, outer, programs }: RunFindings): number | null {
+  const { bracketWidth, outerPathCount, innerPointCount } = scenario.model.method;
+  if (pilot !== null) return outerPathCount === null ? pilot.wantedWidth : null;
+  if (outerPathCount !== null || innerPointCount !== null) return null;
+  return 'money' in bracketWidth
+    ? bracketWidth.money
+    : bracketWidth.relative * Math.abs(programs.sign * outer.lower.mean);
+}

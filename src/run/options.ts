@@ -1,0 +1,49 @@
+import type { Message } from '../messages/message.js';
+import type { Forecast, Plan, RunRecord } from '../result/record.js';
+import type { CheckedScenario, UpperMethod } from '../scenario/model.js';
+
+export interface Progress {
+  readonly stage: 'fit' | 'pilot' | 'bounds' | 'nested';
+  /** Work done and in all, in the stage's own counts; `total` is fixed within a stage. */
+  readonly done: number;
+  readonly total: number;
+}
+
+/** What changes a scenario from outside, as the command line does; each wins over the file. */
+export interface Overrides {
+  /** Where the text came from, for messages; not opened. */
+  readonly path?: string;
+  readonly seed?: string;
+  /** Constants by name; the value is an expression of constants. */
+  readonly with?: Readonly<Record<string, string>>;
+  /** `"0.1%"` of the value or an amount of money such as `"0.02"`. */
+  readonly width?: string;
+  readonly upper?: UpperMethod;
+}
+
+export interface ValueOptions extends Overrides {
+  /** Replays the counts of an earlier run instead of making a pilot. */
+  readonly plan?: Plan;
+  /** Wall time to aim for; it is turned into counts once, after the pilot. */
+  readonly budgetSeconds?: number;
+  /** Threads; 0 runs in the calling thread. Default: one for each core, at most 8. The result does not depend on it. */
+  readonly workers?: number;
+  /** Ends the run early; what is finished is delivered with status `stopped`. */
+  readonly signal?: AbortSignal;
+  readonly onProgress?: (progress: Progress) => void;
+}
+
+/** `refused`: the scenario has mistakes; `stopped`: ended before a bracket existed. */
+export type ValueOutcome =
+  | { readonly kind: 'delivered'; readonly record: RunRecord }
+  | { readonly kind: 'refused'; readonly messages: readonly Message[] }
+  | { readonly kind: 'stopped'; readonly stage: Progress['stage'] };
+
+export type CheckOutcome =
+  | {
+      readonly kind: 'checked';
+      readonly scenario: CheckedScenario;
+      readonly forecast: Forecast;
+      readonly advice: readonly Message[];
+    }
+  | { readonly kind: 'refused'; readonly messages: readonly Message[] };

@@ -1,0 +1,63 @@
+import { blockLanes } from '../program/program.js';
+import type { BlockRange } from '../rule/fit-sweeps.js';
+import { NotFinite } from '../rule/not-finite.js';
+import type { Executor } from '../workers/executor.js';
+import type { Job, ResultOf } from '../workers/jobs.js';
+
+/** Ends a stage because the run was asked to stop. */
+export class Stopped extends Error {}
+
+/** Cuts paths into parcels of whole blocks; depends on the counts alone, never on who works. */
+export function cutIntoParcels(pathCount: number, blocksPerParcel: number): BlockRange[] {
+  const blockCount = Math.ceil(pathCount / blockLanes);
+  return Array.from({ length: Math.ceil(blockCount / blocksPerParcel) }, (_, parcel) => ({
+    firstBlock: parcel * blocksPerParcel,
+    blockCount: Math.min(blocksPerParcel, blockCount - parcel * blocksPerParcel),
+  }));
+}
+
+/** What a stage brought: the results of the first jobs in order; all of them unless the run was stopped. */
+export interface ParcelResults<J extends Job> {
+  readonly results: ResultOf<J>[];
+  readonly isComplete: boolean;
+}
+
+/**
+ * Runs jobs on the executor and returns their results in the order of the jobs, whoever finished first.
+ *
+ * After a stop nothing new is begun, and only the unbroken run of finished jobs from the first on is returned: which
+ * paths an estimate uses then never depends on which of them came back quickly.
+ *
+ * @fails throws NotFinite with the place if a path leaves the finite numbers
+ */
+export async function runParcels<J extends Job>(
+  executor: Executor,
+  jobs: readonly J[],
+  signal: AbortSignal | undefined,
+  onDone: (doneCount: number) => void,
+): Promise<ParcelResults<J>> {
+  const results = new Array<ResultOf<J> | undefined>(jobs.length).fill(undefined);
+  let next = 0;
+  let doneCount = 0;
+  const work = async () => {
+    while (next < jobs.length && signal?.aborted !== true) {
+      const position = next++;
+      const reply = await executor.run(jobs[position]!);
+      if (!reply.ok) {
+        next = jobs.length;
+        throw new NotFinite(reply.notFinite);
+      }
+      results[position] = reply.result as ResultOf<J>;
+      onDone(++doneCount);
+    }
+  };
+  await settleAll(Array.from({ length: executor.workerCount * 2 }, work));
+  const finished = results.findIndex((result) => result === undefined);
+  const unbroken = finished < 0 ? results : results.slice(0, finished);
+  return { results: unbroken as ResultOf<J>[], isComplete: finished < 0 };
+}
+
+/** Waits for all, then throws the first failure: no job is left running behind a thrown error. */
+async function settleAll(tasks: Promise<void>[]): Promise<void> {
+  for (const outcome of await Promise.allSettled(tasks)) if (outcome.status === 'rejected') throw outcome.reason;
+}

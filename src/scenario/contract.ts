@@ -1,0 +1,55 @@
+import { readDecisionDates } from './decision-dates.js';
+import type { AtExpiry, Contract } from './model.js';
+import { echo, readExpression, readNumber } from './read-expression.js';
+import { type Reading, stateScope } from './reading.js';
+import { entryOf, type TreeNode, under } from './tree.js';
+
+/**
+ * Reads the contract. Clauses that are not built yet are passed over here; they have their own message.
+ *
+ * @fails adds `missing-key` for an issuer's `at expiry`, and the mistakes of dates and expressions
+ */
+export function readContract(reading: Reading): Contract | null {
+  const node = under(reading.root, 'contract')!;
+  const { settings } = reading;
+  const decidedByNode = under(node, 'decided by');
+  const decidedBy = decidedByNode?.kind === 'scalar' ? decidedByNode.text : 'holder';
+  if (decidedByNode === undefined) settings.byDefault('contract.decided by', 'holder');
+  else settings.fromText('contract.decided by', decidedBy, decidedByNode);
+  const decisionDates = readDecisionDates(reading);
+  const payoffNode = under(node, 'payoff');
+  const payoff = readExpression(payoffNode, stateScope(reading, 'the payoff'), reading);
+  if (payoff !== null) settings.fromText('contract.payoff', echo(payoff, null), payoffNode!);
+  const atExpiry = readAtExpiry(node, decidedBy, reading);
+  const discountNode = under(node, 'discount');
+  const discount = readNumber(discountNode, 'the discount rate', reading);
+  if (discount !== null)
+    settings.fromText('contract.discount', echo(discount.expression, discount.value), discountNode!);
+  if (decisionDates === null || payoff === null || atExpiry === null || discount === null) return null;
+  if (decidedBy !== 'holder' && decidedBy !== 'issuer') return null;
+  return { decidedBy, decisionDates, payoff, atExpiry, discount: discount.expression };
+}
+
+function readAtExpiry(contract: TreeNode, decidedBy: string, reading: Reading): AtExpiry | null {
+  const node = under(contract, 'at expiry');
+  const { settings, findings } = reading;
+  if (node?.kind === 'scalar') {
+    settings.fromText('contract.at expiry', node.text, node);
+    if (node.value === 'lapse' || node.value === 'forced') return { kind: node.value };
+    const amount = readExpression(node, stateScope(reading, 'the amount at expiry'), reading);
+    return amount === null ? null : { kind: 'pays', amount };
+  }
+  if (decidedBy === 'holder') {
+    settings.byDefault('contract.at expiry', 'lapse');
+    return { kind: 'lapse' };
+  }
+  findings.add({
+    code: 'missing-key',
+    at: entryOf(contract, 'decided by')!.keySpan,
+    what: 'The contract has no `at expiry`.',
+    why: 'What an issuer owes if nothing was done by the last date differs from contract to contract, and decides the value.',
+    mend: 'Add `at expiry: lapse` if nothing is owed then, `at expiry: forced` if the payoff is, or an amount.',
+    evidence: { key: 'at expiry' },
+  });
+  return null;
+}

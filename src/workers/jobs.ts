@@ -1,0 +1,84 @@
+import { type NestedSums, runNestedPaths } from '../bounds/nested-paths.js';
+import { type OuterPurpose, type OuterSums, runOuterPaths } from '../bounds/outer-paths.js';
+import type { Moments } from '../numeric/moments.js';
+import type { SweepKind } from '../rule/backward-induction.js';
+import { Block } from '../rule/block.js';
+import {
+  type BlockRange,
+  type FitStore,
+  type SweepSums,
+  simulateFit,
+  sweepDirection,
+  sweepResiduals,
+  sweepValues,
+} from '../rule/fit-sweeps.js';
+import { NotFinite, type NotFinitePlace } from '../rule/not-finite.js';
+import type { Programs } from '../rule/programs.js';
+import type { Rule } from '../rule/rule.js';
+
+/** What every worker of a run holds: plain data, the large arrays on shared memory. */
+export interface JobContext {
+  readonly programs: Programs;
+  readonly seed: string;
+  readonly rule: Rule;
+  readonly store: FitStore;
+}
+
+/** One parcel of work: small plain data; its result depends on it and on the context alone. */
+export type Job =
+  | { readonly kind: 'simulate'; readonly range: BlockRange }
+  | { readonly kind: 'sweep'; readonly sweep: SweepKind; readonly date: number; readonly range: BlockRange }
+  | {
+      readonly kind: 'outer';
+      readonly purpose: OuterPurpose;
+      readonly pathCount: number;
+      readonly innerPointCount: number;
+      readonly range: BlockRange;
+    }
+  | {
+      readonly kind: 'nested';
+      readonly pathCount: number;
+      readonly innerPathCount: number;
+      readonly range: BlockRange;
+    };
+
+/** Which result belongs to which job. */
+export type ResultOf<J extends Job> = J extends { kind: 'simulate' }
+  ? Moments[][]
+  : J extends { kind: 'sweep' }
+    ? SweepSums
+    : J extends { kind: 'outer' }
+      ? OuterSums
+      : NestedSums;
+
+export type JobReply =
+  | { readonly ok: true; readonly result: ResultOf<Job> }
+  | { readonly ok: false; readonly notFinite: NotFinitePlace };
+
+/** Makes the function that does any job of a run; the same in a thread and in the calling one. */
+export function createJobRunner(context: JobContext): (job: Job) => JobReply {
+  const block = new Block(context.programs, context.seed);
+  return (job) => {
+    try {
+      return { ok: true, result: doJob(block, context, job) };
+    } catch (problem) {
+      if (problem instanceof NotFinite) return { ok: false, notFinite: problem.place };
+      throw problem;
+    }
+  };
+}
+
+const sweeps = { values: sweepValues, residuals: sweepResiduals, direction: sweepDirection };
+
+function doJob(block: Block, { store, rule }: JobContext, job: Job): ResultOf<Job> {
+  switch (job.kind) {
+    case 'simulate':
+      return simulateFit(block, store, job.range);
+    case 'sweep':
+      return sweeps[job.sweep](block, store, rule, job.date, job.range);
+    case 'outer':
+      return runOuterPaths(block, rule, job.purpose, job.pathCount, job.innerPointCount, job.range);
+    case 'nested':
+      return runNestedPaths(block, rule, job.pathCount, job.innerPathCount, job.range);
+  }
+}

@@ -1,0 +1,58 @@
+import { describe, expect, it } from 'vitest';
+import { type CheckFindings, checkReport } from '#built/report/check-text.js';
+import { sampleAdvice, sampleRecord } from './sample-record.js';
+
+const findings: CheckFindings = {
+  title: 'Right to fell one of three groves',
+  settings: sampleRecord.settings,
+  forecast: {
+    peakMemoryBytes: 120 * 1024 ** 2,
+    machineMemoryBytes: 16 * 1024 ** 3,
+    work: { fit: 1.2e6, bounds: null, nested: 0 },
+    columnCount: 10,
+    polynomialCount: 3,
+  },
+  advice: [],
+};
+
+describe('the text of a check', () => {
+  it('counts the settings by where they came from', () => {
+    expect(checkReport(findings).split('\n').slice(0, 2)).toEqual([
+      'Right to fell one of three groves',
+      'No mistakes. 3 settings: 1 from the file, 1 from the command line, 1 by default.',
+    ]);
+  });
+
+  it('shows every setting with its value and its origin', () => {
+    const text = checkReport(findings);
+    expect(text).toMatch(/^ {2}clock +years +default$/m);
+    expect(text).toMatch(/^ {2}constants\.spread +0\.25 +command line$/m);
+    expect(text).toMatch(/^ {2}contract\.payoff +max\(0, largest\(grove\) - 100\) +line 14$/m);
+  });
+
+  it('wraps a long value and cuts nothing', () => {
+    const value = Array.from({ length: 40 }, (_, index) => `term${index}`).join(' + ');
+    const settings = [{ name: 'contract.payoff', value, origin: { kind: 'line', line: 3 } as const }];
+    const text = checkReport({ ...findings, settings }, { width: 80 });
+    for (let index = 0; index < 40; index += 1) expect(text).toContain(`term${index}`);
+    for (const line of text.split('\n')) expect(line.length).toBeLessThanOrEqual(80);
+  });
+
+  it('forecasts memory and work, and says what only the pilot knows', () => {
+    const text = checkReport(findings);
+    expect(text).toMatch(/memory at the peak +about 120 MB of the machine's 16 GB/);
+    expect(text).toMatch(/regression +10 columns, 3 martingale polynomials/);
+    expect(text).toMatch(/work to fit the rule +about 1\.2 million path-dates/);
+    expect(text).toMatch(/work for the bounds +set by the pilot/);
+    expect(text).not.toContain('Andersen');
+    const nested = { ...findings.forecast, machineMemoryBytes: null, work: { fit: 1, bounds: 5, nested: 3e9 } };
+    expect(checkReport({ ...findings, forecast: nested })).toMatch(
+      /Andersen-Broadie bound +about 3 billion path-dates/,
+    );
+  });
+
+  it('renders advice', () => {
+    expect(checkReport({ ...findings, advice: [sampleAdvice] })).toContain('The gap is 2.1% of the value.');
+    expect(checkReport(findings)).toContain('Advice\n  None.');
+  });
+});

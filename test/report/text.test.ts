@@ -1,0 +1,196 @@
+import { describe, expect, it } from 'vitest';
+import { CAUTION, textReport } from '#built/report/text.js';
+import type { RunRecord } from '#built/result/record.js';
+import { issuerRecord, sampleAdvice, sampleRecord } from './sample-record.js';
+
+/** The cells of the row that starts with a name. */
+function row(text: string, name: string): string[] {
+  const line = text.split('\n').find((candidate) => candidate.trim().startsWith(`${name}  `));
+  return (line ?? '').trim().split(/ {2,}/);
+}
+
+const oneLine = (text: string) => text.replaceAll(/\s+/g, ' ');
+
+describe('the text of a run', () => {
+  const text = textReport(sampleRecord);
+
+  it('answers in its second line, rounded outward', () => {
+    const [title, answer] = text.split('\n');
+    expect(title).toBe('Right to fell one of three groves');
+    expect(answer).toBe('Value to the holder: between 16.1502 and 16.1690 crowns (95% bracket, 0.12% wide).');
+  });
+
+  it('shows each estimate to two digits of its half-width, with paths and method', () => {
+    expect(row(text, 'lower bound')).toEqual([
+      'lower bound',
+      '16.1543',
+      '0.0041',
+      '61,440',
+      'fitted rule, one exercise per path',
+    ]);
+    expect(row(text, 'upper bound')).toEqual(['upper bound', '16.1668', '0.0022', '61,440', 'one-step martingale']);
+    expect(row(text, 'another upper bound').slice(0, 4)).toEqual(['another upper bound', '16.171', '0.012', '1,024']);
+    expect(row(text, 'gap').slice(0, 3)).toEqual(['gap', '0.0125', '0.0012']);
+  });
+
+  it('condenses thirty dates and still accounts for every path', () => {
+    const shares = text
+      .split('\n')
+      .flatMap((line) => /^ {2}(?:[\d.]+ to [\d.]+|never) +([\d.]+)%/.exec(line)?.[1] ?? []);
+    expect(shares.length).toBeLessThanOrEqual(13);
+    expect(shares.reduce((sum, share) => sum + Number(share), 0)).toBeCloseTo(100, 6);
+    expect(text).toContain('date (years)');
+    expect(text).toContain('5% have done so by 0.3, half by 2.6 and 95% by 3.');
+  });
+
+  it('says the plan, the pilot, the basis, the passed checks, the time and the caution', () => {
+    const words = oneLine(text);
+    expect(words).toContain(
+      '40,000 paths fit the rule. 61,440 fresh paths carry the bounds, with 16 points of one step',
+    );
+    expect(words).toContain('expected a bracket 0.024 crowns wide where 0.026 was wanted; it became 0.019.');
+    expect(words).toContain('Kept: 9 to 10, by date. The columns explain 40.0% to 90.4% of the variance');
+    for (const check of sampleRecord.passedChecks) expect(text).toContain(`✓ ${check}`);
+    expect(text).toContain('12.3 s in all: fit 3.2 s, pilot 1.1 s, bounds 7.9 s.');
+    expect(words).toContain(CAUTION);
+    expect(text).toMatch(/\nAdvice\n {2}None\.\n/);
+  });
+
+  it('tells how to get the same digits', () => {
+    expect(text).toContain("  tarry value orchard.yaml --seed 'barn door' --with spread=0.25 --plan RECORD\n");
+    const origin = { kind: 'command line' } as const;
+    const formula = {
+      ...sampleRecord,
+      settings: [{ name: 'constants.spread', value: 'if(1 >= 0, 2 * 0.1, 0) = 0.2', origin }],
+    };
+    expect(textReport(formula)).toContain(" --with 'spread=if(1 >= 0, 2 * 0.1, 0)' --plan");
+    expect(textReport(sampleRecord, { recordPath: 'my runs/a.json' })).toContain("--plan 'my runs/a.json'\n");
+    const piped = { ...sampleRecord, scenario: { ...sampleRecord.scenario, path: 'standard input' } };
+    expect(textReport(piped)).toContain("  tarry value - --seed 'barn door'");
+  });
+
+  it('names what was changed outside the file', () => {
+    expect(text.split('\n')[2]).toBe('Changed on the command line: constants.spread = 0.25.');
+    expect(textReport({ ...sampleRecord, settings: [] })).not.toContain('Changed on the command line');
+  });
+
+  it('keeps to the width it is given', () => {
+    for (const line of textReport(sampleRecord, { width: 70 }).split('\n')) {
+      const isTableOrCommand = /─|\d {3}|made by|upper bound less|tarry value/.test(line);
+      if (!isTableOrCommand && line !== text.split('\n')[1]) expect(line.length).toBeLessThanOrEqual(70);
+    }
+  });
+});
+
+describe('the gap', () => {
+  it('says between which estimates it lies', () => {
+    expect(row(textReport(sampleRecord), 'gap')[3]).toBe('upper bound less lower bound');
+    const upper = sampleRecord.uppers[1]!;
+    expect(row(textReport({ ...sampleRecord, upper }), 'gap')[3]).toBe('one-step martingale against the fitted rule');
+  });
+});
+
+describe('who decides', () => {
+  const text = oneLine(textReport(issuerRecord));
+
+  it('gives an issuer the rule as the upper and martingales as the lower bounds', () => {
+    expect(row(textReport(issuerRecord), 'upper bound')[4]).toBe('fitted rule, one exercise per path');
+    expect(row(textReport(issuerRecord), 'lower bound')[4]).toBe('one-step martingale');
+    expect(row(textReport(issuerRecord), 'another lower bound')[1]).toBe('16.130');
+    expect(text).toContain('Value to the holder: between');
+    expect(text).toContain(
+      'The issuer decides and wants to pay as little as it can. The upper bound is what the holder receives',
+    );
+    expect(text).toContain("The bracket's lower end comes from");
+  });
+
+  it('never says to an issuer that a rule earns', () => {
+    expect(text).not.toContain('earn');
+  });
+});
+
+describe('doubt', () => {
+  it('renders advice with its number and its remedy', () => {
+    const text = textReport({ ...sampleRecord, advice: [sampleAdvice] });
+    expect(text).toContain('Advice (1)\n');
+    for (const part of ['wide-gap', 'The gap is 2.1% of the value.', 'orchard.yaml:17:3', 'Write a richer list']) {
+      expect(text).toContain(part);
+    }
+  });
+
+  it('shows a crossing as it was estimated', () => {
+    const text = textReport({ ...sampleRecord, bracket95: { low: 16.2, high: 16.1 } });
+    expect(text.split('\n')[1]).toBe(
+      'No bracket: its low end, 16.2000 crowns, is above its high end, 16.1000. The bounds cross; see the advice.',
+    );
+  });
+
+  it('says that a run was stopped', () => {
+    expect(textReport({ ...sampleRecord, status: 'stopped' }).split('\n')[2]).toMatch(/^Stopped early:/);
+  });
+
+  it('calls an error that is not known unknown', () => {
+    const unknown = { ...sampleRecord.upper, standardError: null, halfWidth95: null };
+    expect(row(textReport({ ...sampleRecord, upper: unknown }), 'upper bound').slice(1, 3)).toEqual([
+      '16.166789',
+      'unknown',
+    ]);
+  });
+});
+
+describe('odd records', () => {
+  it('takes a right that is never used, one date, no pilot and no nested bound', () => {
+    const record: RunRecord = {
+      ...sampleRecord,
+      pilot: null,
+      plan: { ...sampleRecord.plan, nestedOuterPathCount: 0, nestedInnerPathCount: 0 },
+      uppers: [sampleRecord.upper],
+      dates: [{ ...sampleRecord.dates[29]!, time: 1, exerciseShare: 0 }],
+      neverExercisedShare: 1,
+      exerciseTimeQuantiles: null,
+      passedChecks: [],
+    };
+    const text = textReport(record);
+    expect(row(text, 'never')[1]).toBe('100.0%');
+    expect(oneLine(text)).toContain('Every count was given; there was no pilot.');
+    for (const word of ['Andersen', 'another', 'Of the paths', 'Checks that', 'Kept', 'NaN', 'undefined', 'Infinity']) {
+      expect(text).not.toContain(word);
+    }
+  });
+
+  it('takes a value of nothing', () => {
+    const zero = { value: 0, standardError: 0, halfWidth95: 0 };
+    const record: RunRecord = {
+      ...sampleRecord,
+      lower: { ...sampleRecord.lower, ...zero },
+      upper: { ...sampleRecord.upper, ...zero },
+      uppers: [],
+      gap: zero,
+      bracket95: { low: 0, high: 0 },
+    };
+    expect(textReport(record).split('\n')[1]).toBe(
+      'Value to the holder: between 0.000000 and 0.000000 crowns (95% bracket).',
+    );
+  });
+
+  it('lets no text of a scenario steer the terminal', () => {
+    const hostile = '\u001b[2J\u001b]0;gone\u0007';
+    const text = textReport({
+      ...sampleRecord,
+      scenario: { ...sampleRecord.scenario, title: hostile, money: hostile, path: hostile },
+      seed: hostile,
+      settings: [{ name: 'clock', value: hostile, origin: { kind: 'command line' } }],
+      passedChecks: [hostile],
+    });
+    // biome-ignore lint/suspicious/noControlCharactersInRegex: these are the characters looked for
+    expect(text).not.toMatch(/[\u0007\u001b]/);
+  });
+
+  it('colours only through the style it is given, and keeps columns in line', () => {
+    const styled = textReport(sampleRecord, {
+      style: (role, text) => (role === 'strong' ? `\u001b[1m${text}\u001b[22m` : text),
+    });
+    expect(styled.replaceAll('\u001b[1m', '').replaceAll('\u001b[22m', '')).toBe(textReport(sampleRecord));
+    expect(styled).toContain('\u001b[1m16.1502 and 16.1690 crowns\u001b[22m');
+  });
+});
