@@ -13,6 +13,10 @@ const innerPointCounts = [8, 16, 32, 64, 128, 256, 512, 1024, 2048];
 /** Share of the wanted width that the plan aims at: the pilot's own figures are uncertain. */
 const aim = 0.85;
 
+/** Width that is given away for less work where the wanted width, or all of a budget, is out of reach anyway. */
+const waste = 0.05;
+const rounding = 1e-9;
+
 /**
  * Steps of outer and inner paths that a plan may ask for when nobody set a budget.
  *
@@ -71,31 +75,34 @@ export interface PlanRequest {
  * noise is small beside the gap.
  */
 export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
-  const candidates = (request.innerPointCount === null ? innerPointCounts : [request.innerPointCount]).map(
-    (innerPointCount) => {
-      const affordable = Math.floor(request.stepLimit / (request.dateCount * (innerPointCount + 1)));
-      const wanted = request.spendAll ? affordable : outerPathsFor(model, innerPointCount, request.wantedWidth);
-      const outerPathCount =
-        request.outerPathCount ??
-        Math.min(largestOuterPathCount, Math.max(smallestOuterPathCount, Math.min(affordable, wanted)));
-      const counts = { outerPathCount, innerPointCount };
-      return { counts, width: expectedWidth(model, counts), work: outerPathCount * (innerPointCount + 1) };
-    },
-  );
-  const reaching = request.spendAll
-    ? []
-    : candidates.filter(({ width }) => width <= request.wantedWidth * (aim + 1e-9));
-  const best = reaching.length > 0 ? least(reaching, ({ work }) => work) : least(candidates, ({ width }) => width);
-  return best.counts;
+  const innerCounts = request.innerPointCount === null ? innerPointCounts : [request.innerPointCount];
+  const candidates = innerCounts.map((innerPointCount) => {
+    const affordable = Math.floor(request.stepLimit / (request.dateCount * (innerPointCount + 1)));
+    const wanted = request.spendAll ? affordable : outerPathsFor(model, innerPointCount, request.wantedWidth);
+    const bounded = Math.min(largestOuterPathCount, Math.max(smallestOuterPathCount, Math.min(affordable, wanted)));
+    const counts = { outerPathCount: request.outerPathCount ?? bounded, innerPointCount };
+    const work = counts.outerPathCount * (innerPointCount + 1);
+    return { counts, width: expectedWidth(model, counts), work, isAffordable: affordable >= counts.outerPathCount };
+  });
+  const affordable = candidates.filter(({ isAffordable }) => isAffordable);
+  const open = affordable.length > 0 ? affordable : candidates.slice(0, 1);
+  const goal = request.spendAll ? 0 : request.wantedWidth * aim * (1 + rounding);
+  const narrowest = least(open, ({ width }) => width).width;
+  const enough = Math.max(goal, narrowest * (1 + waste));
+  return least(
+    open.filter(({ width }) => width <= enough),
+    ({ work }) => work,
+  ).counts;
 }
 
 /** Outer paths that bring the noise down to what the gap leaves of the aim, or to a quarter of a gap that is too wide. */
 function outerPathsFor(model: PilotModel, innerPointCount: number, wantedWidth: number): number {
   const gap = model.limitGap + model.gapPerInnerShare / innerPointCount;
   const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
-  const room = Math.max(aim * wantedWidth - gap, gap / 4);
+  const left = aim * wantedWidth - gap;
+  const room = left > 0 ? left : gap / 4;
   if (noise === 0) return smallestOuterPathCount;
-  return Math.ceil((noise / room) ** 2);
+  return Math.ceil((noise / room) * (noise / room));
 }
 
 function least<T>(items: readonly T[], by: (item: T) => number): T {

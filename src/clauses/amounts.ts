@@ -1,6 +1,6 @@
 import type { Graph, Node } from '../program/graph.js';
 import { lower, type Meanings } from '../program/lower.js';
-import type { Contract } from '../scenario/model.js';
+import type { Contract } from './contract.js';
 
 /** The contract's amounts at one date as the party who decides sees them: an issuer's signs are turned round. */
 export interface Amounts {

@@ -1,10 +1,18 @@
 import { exp } from '../program/elementary.js';
 import { evaluateConstant } from '../program/evaluate.js';
-import type { CheckedModel } from '../scenario/model.js';
+import type { Contract } from './contract.js';
 
-/** Factors exp(-rate × t) that bring money of each time to today. @unit money today per money then */
-export function discountFactors(model: CheckedModel, times: readonly number[]): number[] {
-  const constants = new Map(model.constants.map(({ name, value }) => [name, value]));
-  const rate = evaluateConstant(model.contract.discount.tree, (name) => constants.get(name)!);
+/**
+ * Factors exp(-rate × t) that bring money of each time to today.
+ *
+ * @param constants values by name
+ * @unit money today per money then
+ */
+export function discountFactors(
+  { discount }: Contract,
+  constants: ReadonlyMap<string, number>,
+  times: readonly number[],
+): number[] {
+  const rate = evaluateConstant(discount.tree, (name) => constants.get(name)!);
   return times.map((time) => exp(-rate * time));
 }

@@ -30,10 +30,10 @@ function hasEqualMembers(model: CheckedModel, drivers: readonly Driver[], member
   const constants = new Map(model.constants.map(({ name, value }) => [name, value]));
   const describe = (index: number) => {
     const { start, number, family } = drivers[index]!;
-    const valueOf = (name: string) => (name === 'number' ? number : constants.get(name)!);
+    const constantOf = (name: string) => (name === 'number' ? number : constants.get(name)!);
     return [
       start,
-      ...Object.values(family.parameters).map((parameter) => evaluateConstant(parameter.tree, valueOf)),
+      ...Object.values(family.parameters).map((parameter) => evaluateConstant(parameter.tree, constantOf)),
     ].join(' ');
   };
   return members.every((index) => describe(index) === describe(members[0]!));

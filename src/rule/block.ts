@@ -51,7 +51,9 @@ export class Block {
 
   /** Puts every path at its start, as the state after a step that led to today. */
   restart(): void {
-    this.programs.drivers.forEach(({ start }, index) => this.column(this.programs.layout.next + index).fill(start));
+    this.programs.drivers.forEach(({ start }, index) => {
+      this.column(this.programs.layout.next + index).fill(start);
+    });
   }
 
   /** Takes the drivers after the last step as the state before the next. */

@@ -130,6 +130,7 @@ export function buildPrograms(model: CheckedModel): Programs {
     { node: amounts.terminal, column: terminal },
   ];
   const dates = model.contract.decisionDates;
+  const constants = new Map(model.constants.map(({ name, value }) => [name, value]));
   const times = dates[0] === 0 ? dates : [0, ...dates];
   return {
     layout,
@@ -143,7 +144,7 @@ export function buildPrograms(model: CheckedModel): Programs {
     polynomialNames: written.map(({ name }) => name),
     variableCount: rawVariables.length,
     times,
-    discountFactors: discountFactors(model, times),
+    discountFactors: discountFactors(model.contract, constants, times),
     todayIsDecisionDate: dates[0] === 0,
     floor: continuationFloor(model.contract),
     sign: decisionSign(model.contract),

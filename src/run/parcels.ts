@@ -52,7 +52,7 @@ export async function runParcels<J extends Job>(
     }
   };
   await settleAll(Array.from({ length: executor.workerCount * 2 }, work));
-  const finished = results.findIndex((result) => result === undefined);
+  const finished = results.indexOf(undefined);
   const unbroken = finished < 0 ? results : results.slice(0, finished);
   return { results: unbroken as ResultOf<J>[], isComplete: finished < 0 };
 }

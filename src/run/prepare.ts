@@ -1,8 +1,7 @@
 import type { Message } from '../messages/message.js';
 import { buildPrograms, type Programs } from '../rule/programs.js';
 import type { CheckedScenario } from '../scenario/model.js';
-import { readScenarioObject } from '../scenario/read-object.js';
-import { readScenario } from '../scenario/read-scenario.js';
+import { readScenario, readScenarioObject } from '../scenario/read.js';
 import type { Overrides } from './options.js';
 
 /** A scenario that passed its check, with its programs. */

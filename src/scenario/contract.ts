@@ -1,5 +1,5 @@
+import type { AtExpiry, Contract } from '../clauses/contract.js';
 import { readDecisionDates } from './decision-dates.js';
-import type { AtExpiry, Contract } from './model.js';
 import { echo, readExpression, readNumber } from './read-expression.js';
 import { type Reading, stateScope } from './reading.js';
 import { entryOf, type TreeNode, under } from './tree.js';

@@ -1,3 +1,4 @@
+import type { Contract } from '../clauses/contract.js';
 import type { PlacedExpression } from '../program/expression.js';
 
 /** A named number of the scenario. */
@@ -26,22 +27,6 @@ export interface DriverFamily {
 }
 
 export type LawName = 'lognormal' | 'normal';
-
-/** What happens to a right that was not used at the last decision date. */
-export type AtExpiry =
-  | { readonly kind: 'lapse' }
-  | { readonly kind: 'forced' }
-  | { readonly kind: 'pays'; readonly amount: PlacedExpression };
-
-export interface Contract {
-  readonly decidedBy: 'holder' | 'issuer';
-  /** Strictly rising, in clock units; 0 is among them only if today is a decision date. */
-  readonly decisionDates: readonly number[];
-  readonly payoff: PlacedExpression;
-  readonly atExpiry: AtExpiry;
-  /** Continuously compounded rate per clock unit, an expression of constants. */
-  readonly discount: PlacedExpression;
-}
 
 export type UpperMethod = 'one-step' | 'andersen-broadie' | 'regressed';
 

@@ -1,0 +1,64 @@
+import {
+  mergeOuterSums,
+  noOuterSums,
+  type OuterPurpose,
+  type OuterSums,
+  runOuterPaths,
+} from '#built/bounds/outer-paths.js';
+import { fitRule, type StepFit } from '#built/rule/backward-induction.js';
+import { Block } from '#built/rule/block.js';
+import { buildPrograms, type Programs } from '#built/rule/programs.js';
+import type { Rule } from '#built/rule/rule.js';
+import { openContext } from '#built/run/fit-size.js';
+import { readScenario } from '#built/scenario/read.js';
+import { createJobRunner, type Job, type JobContext, type JobReply } from '#built/workers/jobs.js';
+
+/** A fitted rule with all that is needed to run stages on it, in the calling thread. */
+export interface Fitted {
+  readonly programs: Programs;
+  readonly context: JobContext;
+  readonly rule: Rule;
+  readonly fits: readonly StepFit[];
+  readonly block: Block;
+  readonly run: (job: Job) => JobReply;
+  outer(purpose: OuterPurpose, pathCount: number, innerPointCount: number): OuterSums;
+}
+
+export function programsOf(text: string): { programs: Programs; seed: string } {
+  const { scenario, messages } = readScenario(text, {});
+  if (scenario === null) throw new Error(JSON.stringify(messages, null, 1));
+  return { programs: buildPrograms(scenario.model), seed: scenario.model.seed };
+}
+
+export async function fit(text: string, pathCount: number): Promise<Fitted> {
+  const { programs, seed } = programsOf(text);
+  const context = openContext(programs, seed, pathCount);
+  const run = createJobRunner(context);
+  const range = { firstBlock: 0, blockCount: Math.ceil(pathCount / 512) };
+  const result = (job: Job): never => {
+    const reply = run(job);
+    if (!reply.ok) throw new Error(JSON.stringify(reply.notFinite));
+    return reply.result as never;
+  };
+  const fits = await fitRule(programs, context.rule, context.store.direction, {
+    simulate: async () => [result({ kind: 'simulate', range })],
+    sweep: async (sweep, date) => [result({ kind: 'sweep', sweep, date, range })],
+  });
+  const block = new Block(programs, seed);
+  return {
+    programs,
+    context,
+    rule: context.rule,
+    fits,
+    block,
+    run,
+    outer: (purpose, count, inner) =>
+      mergeOuterSums(
+        noOuterSums(programs.times.length),
+        runOuterPaths(block, context.rule, purpose, count, inner, {
+          firstBlock: 0,
+          blockCount: Math.ceil(count / 512),
+        }),
+      ),
+  };
+}

@@ -1,0 +1,40 @@
+import { expect, test } from 'vitest';
+import { fit } from '../fitted.js';
+import { lots } from '../scenario-texts.js';
+
+test('the increment takes out most of the spread of the next value, at every date', async () => {
+  const { fits } = await fit(lots(), 16_384);
+  for (const { spread, controlledSpread } of fits) expect(controlledSpread).toBeLessThan(0.35 * spread);
+});
+
+test('today holds one state: the regression keeps the constant alone and says so', async () => {
+  const { fits, programs } = await fit(lots(), 4096);
+  expect(fits[0]!.kept).toHaveLength(1);
+  expect(fits[0]!.dropped).toHaveLength(programs.columns.length - 1);
+  expect(fits[0]!.explainedShare).toBeCloseTo(0, 6);
+});
+
+test('a driver that is added leaves the draws of the others as they were', async () => {
+  const alone = await fit(lots({ count: 1, payoff: 'max(0, lot[1] - 100)' }), 512);
+  const together = await fit(
+    lots({
+      count: 1,
+      payoff: 'max(0, lot[1] - 100)',
+      drivers: ['  fuel:', '    start: 3', '    law: normal', '    volatility: 0.4'],
+    }),
+    512,
+  );
+  const dates = alone.programs.times.length - 1;
+  for (let date = 0; date < dates; date++) {
+    const one = alone.context.store.paths.subarray(date * 512, (date + 1) * 512);
+    const two = together.context.store.paths.subarray(date * 1024, date * 1024 + 512);
+    expect([...two]).toEqual([...one]);
+  }
+});
+
+test('the fitted continuation value today does not depend on the sign convention: an issuer of the negative decides alike', async () => {
+  const holder = await fit(lots({ count: 1, payoff: 'lot[1] - 100', atExpiry: 'lapse' }), 4096);
+  const issuer = await fit(lots({ count: 1, payoff: '100 - lot[1]', atExpiry: 'lapse', decidedBy: 'issuer' }), 4096);
+  expect([...issuer.rule.continuation]).toEqual([...holder.rule.continuation]);
+  expect([...issuer.rule.integrands]).toEqual([...holder.rule.integrands]);
+});
