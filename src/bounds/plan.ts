@@ -8,7 +8,8 @@ export const pilotInnerPointCount = 32;
 
 const smallestOuterPathCount = 1024;
 const largestOuterPathCount = 4_000_000;
-const innerPointCounts = [8, 16, 32, 64, 128, 256, 512, 1024, 2048];
+/** From the pilot's own count up: fewer points were not tried, and their noise cannot be read off those that were. */
+const innerPointCounts = [32, 64, 128, 256, 512, 1024, 2048];
 
 /** Share of the wanted width that the plan aims at: the pilot's own figures are uncertain. */
 const aim = 0.85;

@@ -22,19 +22,31 @@ export const stepUniforms = { duration: 0, count: 1 } as const;
 export function buildStepProgram(model: CheckedModel, drivers: readonly Driver[], columns: StepColumns): Program {
   const graph = new Graph();
   const duration = graph.uniform(stepUniforms.duration);
-  const innovations = drivers.map((_, index) => graph.column(columns.innovations + index));
+  const columnsFrom = (first: number) => drivers.map((_, index) => graph.column(first + index));
+  const next = writeStep(model, graph, drivers, columnsFrom(columns.state), columnsFrom(columns.innovations), duration);
+  const outputs = next.map((node, index) => ({ node, column: columns.next + index }));
+  return compile(graph, outputs, stepUniforms.count, columns.scratch);
+}
+
+/** Writes the drivers after a step from nodes for the drivers before it, independent innovations and the duration. */
+export function writeStep(
+  model: CheckedModel,
+  graph: Graph,
+  drivers: readonly Driver[],
+  states: readonly Node[],
+  innovations: readonly Node[],
+  duration: Node,
+): Node[] {
   const shocks = correlatedShocks(model, graph, innovations);
-  const outputs = drivers.map((driver, index) => {
+  return drivers.map((driver, index) => {
     const meanings = meaningsOfMember(model, graph, driver.number);
-    const node = driver.law.step(graph, {
-      state: graph.column(columns.state + index),
+    return driver.law.step(graph, {
+      state: states[index]!,
       shock: shocks[index]!,
       duration,
       parameter: (key) => lower(driver.family.parameters[key]!.tree, graph, meanings),
     });
-    return { node, column: columns.next + index };
   });
-  return compile(graph, outputs, stepUniforms.count, columns.scratch);
 }
 
 /**

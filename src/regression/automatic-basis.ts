@@ -17,13 +17,17 @@ const degreeForCount = [0, 16, 6, 4, 4, 3, 2, 2, 2];
 const integrandDegreeForCount = [0, 16, 4, 3, 2, 2, 2, 2, 2];
 
 /**
- * The automatic basis: products of Hermite polynomials of the standardised variables up to a total degree, and the
- * payoff.
+ * The automatic basis: products of Hermite polynomials of the standardised variables up to a total degree, and columns
+ * made from the payoff.
  *
  * Hermite polynomials and not powers, because standardised columns that are nearly uncorrelated keep the normal
- * equations well conditioned; the payoff brings the kink that no smooth polynomial can follow.
+ * equations well conditioned; the payoff brings the bends that no smooth polynomial can follow.
  */
-export function automaticBasis(graph: Graph, variables: readonly StandardVariable[], payoff: Node): Basis {
+export function automaticBasis(
+  graph: Graph,
+  variables: readonly StandardVariable[],
+  payoffs: readonly Column[],
+): Basis {
   const leading = variables.filter((variable) => variable.leading);
   const degree = degreeForCount[leading.length] ?? 0;
   const integrandDegree = integrandDegreeForCount[leading.length] ?? 0;
@@ -35,7 +39,7 @@ export function automaticBasis(graph: Graph, variables: readonly StandardVariabl
     { name: '1', node: graph.constant(1) },
     ...low.map((exponents) => productColumn(graph, leading, exponents)),
     ...alone.map(({ name, node }) => ({ name: `H1(${name})`, node })),
-    { name: 'payoff', node: payoff },
+    ...payoffs,
   ];
   const rest = [
     ...high.map((exponents) => productColumn(graph, leading, exponents)),

@@ -4,8 +4,9 @@ import type { Interpreter, LoadedProgram } from '../program/interpreter.js';
 import { createPlainInterpreter } from '../program/plain-interpreter.js';
 import { blockLanes } from '../program/program.js';
 import type { StreamKey } from '../program/stream.js';
+import { dateUniforms } from './date-graph.js';
 import { NotFinite } from './not-finite.js';
-import { evaluateUniforms, type Programs } from './programs.js';
+import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
 
 /**
@@ -96,11 +97,13 @@ export class Block {
   evaluate(date: number, rule: Rule, firstPath: number): void {
     const { times, discountFactors: factors, variableCount, layout } = this.programs;
     const { uniforms } = this.#evaluate;
-    uniforms[evaluateUniforms.clock] = times[date]!;
-    uniforms[evaluateUniforms.discountFactor] = factors[date]!;
+    uniforms[dateUniforms.clock] = times[date]!;
+    uniforms[dateUniforms.discountFactor] = factors[date]!;
+    uniforms[dateUniforms.untilNext] = (times[date + 1] ?? times[date]!) - times[date]!;
+    uniforms[dateUniforms.untilLast] = times.at(-1)! - times[date]!;
     uniforms.set(
       rule.standards.subarray(date * variableCount * 2, (date + 1) * variableCount * 2),
-      evaluateUniforms.firstStandard,
+      dateUniforms.firstStandard,
     );
     this.interpreter.run(this.#evaluate, this.lanes);
     this.#checkFinite(layout.payoff, 2, date, firstPath);

@@ -1,0 +1,76 @@
+import { type Amounts, writeAmounts } from '../clauses/amounts.js';
+import type { Driver } from '../paths/drivers.js';
+import { meaningsOfState } from '../paths/meanings.js';
+import { Graph, type Node } from '../program/graph.js';
+import { automaticBasis } from '../regression/automatic-basis.js';
+import type { Basis, Column } from '../regression/basis.js';
+import { largestDriverCount, writeExpectedPayoff } from '../regression/expected-payoff.js';
+import { statedBasis } from '../regression/stated-basis.js';
+import { type DriverGroup, type Variable, writeVariables } from '../regression/variables.js';
+import type { CheckedModel } from '../scenario/model.js';
+import type { DriverLayout } from './layout.js';
+
+/**
+ * Uniform inputs of the programs that look at one date, by position; mean and inverse spread of each variable follow
+ * from `firstStandard` on.
+ */
+export const dateUniforms = { clock: 0, discountFactor: 1, untilNext: 2, untilLast: 3, firstStandard: 4 } as const;
+
+/** Everything about one date as a function of the drivers in `next`: amounts, basis, variables before standardising. */
+export interface DateGraph {
+  readonly graph: Graph;
+  readonly amounts: Amounts;
+  readonly basis: Basis;
+  readonly variables: readonly Variable[];
+  readonly uniformCount: number;
+}
+
+/** Spreads from the mean beyond which a standardised variable stays where it is. */
+const boundInSpreads = 3;
+
+/** Writes amounts and basis of a date. */
+export function writeDateGraph(
+  model: CheckedModel,
+  drivers: readonly Driver[],
+  groups: readonly DriverGroup[],
+  layout: DriverLayout,
+): DateGraph {
+  const graph = new Graph();
+  const states = drivers.map((_, index) => graph.column(layout.next + index));
+  const clock = graph.uniform(dateUniforms.clock);
+  const factor = graph.uniform(dateUniforms.discountFactor);
+  const amountsAt = (nodes: readonly Node[], time: Node) =>
+    writeAmounts(graph, model.contract, meaningsOfState(model, graph, drivers, nodes, time), factor);
+  const amounts = amountsAt(states, clock);
+  if (model.method.basis !== 'auto') {
+    const basis = statedBasis(model.method.basis, graph, meaningsOfState(model, graph, drivers, states, clock));
+    return { graph, amounts, basis, variables: [], uniformCount: dateUniforms.firstStandard };
+  }
+  const variables = writeVariables(graph, drivers, groups, states);
+  const standardised = variables.map(({ name, node, leading }, index) => {
+    const mean = graph.uniform(dateUniforms.firstStandard + 2 * index);
+    const inverseSpread = graph.uniform(dateUniforms.firstStandard + 2 * index + 1);
+    return { name, leading, node: bounded(graph, graph.multiply(graph.subtract(node, mean), inverseSpread)) };
+  });
+  const payoffs: Column[] = [{ name: 'payoff', node: amounts.payoff }];
+  if (drivers.length <= largestDriverCount) {
+    const expectedAfter = (uniform: number) => {
+      const duration = graph.uniform(uniform);
+      const payoffAt = (nodes: readonly Node[]) => amountsAt(nodes, graph.add(clock, duration)).payoff;
+      return writeExpectedPayoff(model, graph, drivers, states, duration, payoffAt);
+    };
+    payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
+    payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });
+  }
+  const basis = automaticBasis(graph, standardised, payoffs);
+  return { graph, amounts, basis, variables, uniformCount: dateUniforms.firstStandard + 2 * variables.length };
+}
+
+/**
+ * Holds a standardised variable between bounds. Polynomials of an unbounded one grow so fast that the few farthest
+ * paths would rule the regression, and their errors would be carried back from date to date.
+ */
+function bounded(graph: Graph, variable: Node): Node {
+  const fromAbove = graph.apply('minimum', variable, graph.constant(boundInSpreads));
+  return graph.apply('maximum', fromAbove, graph.constant(-boundInSpreads));
+}
