@@ -1,7 +1,7 @@
 import { checkScenario } from './run/check.js';
 import type { CheckOutcome, Overrides, ValueOptions, ValueOutcome } from './run/options.js';
 import { valueScenario } from './run/value.js';
-import { thisMachine } from './workers/machine.js';
+import { programVersion, thisMachine } from './workers/machine.js';
 
 export type { Message, Place, Severity } from './messages/message.js';
 export { renderMessages } from './messages/render.js';
@@ -27,4 +27,9 @@ export function value(scenario: string | object, options: ValueOptions = {}): Pr
 /** Checks a scenario, echoes its settings and forecasts memory and work, without drawing a path. */
 export async function check(scenario: string | object, options: Overrides = {}): Promise<CheckOutcome> {
   return checkScenario(scenario, options, thisMachine());
+}
+
+/** The version of this package. */
+export function version(): string {
+  return programVersion();
 }

@@ -30,7 +30,7 @@ export function programsOf(text: string): { programs: Programs; seed: string } {
   return { programs: buildPrograms(scenario.model), seed: scenario.model.seed };
 }
 
-export async function fit(text: string, pathCount: number): Promise<Fitted> {
+export async function fitted(text: string, pathCount: number): Promise<Fitted> {
   const { programs, seed } = programsOf(text);
   const context = openContext(programs, seed, pathCount);
   const run = createJobRunner(context);

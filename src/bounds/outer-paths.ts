@@ -16,6 +16,8 @@ export interface OuterSums {
   /** Largest payoff less martingale on the path: at least `lower` on every path. */
   readonly upper: Moments;
   readonly gap: Moments;
+  /** Regressed maximum less `lower`. */
+  readonly regressedGap: Moments;
   /** The same maximum with the regressed martingale, which needs no inner points. */
   readonly regressed: Moments;
   /** Upper with the first half of the inner points: shows how fast inner noise still falls. */
@@ -31,6 +33,7 @@ export const noOuterSums = (dateCount: number): OuterSums => ({
   lower: noMoments,
   upper: noMoments,
   gap: noMoments,
+  regressedGap: noMoments,
   regressed: noMoments,
   halfInner: noMoments,
   plain: noMoments,
@@ -44,6 +47,7 @@ export function mergeOuterSums(a: OuterSums, b: OuterSums): OuterSums {
     lower: mergeMoments(a.lower, b.lower),
     upper: mergeMoments(a.upper, b.upper),
     gap: mergeMoments(a.gap, b.gap),
+    regressedGap: mergeMoments(a.regressedGap, b.regressedGap),
     regressed: mergeMoments(a.regressed, b.regressed),
     halfInner: mergeMoments(a.halfInner, b.halfInner),
     plain: mergeMoments(a.plain, b.plain),
@@ -170,12 +174,14 @@ function runBlock(
   }
 
   const gap = upper.map((value, lane) => value - lower[lane]!);
+  const regressedGap = regressedUpper.map((value, lane) => value - lower[lane]!);
   const exerciseCounts = new Array<number>(times.length + 1).fill(0);
   for (const date of exercisedAt) exerciseCounts[date] = exerciseCounts[date]! + 1;
   return {
     lower: momentsOf(lower, 0, lanes),
     upper: momentsOf(upper, 0, lanes),
     gap: momentsOf(gap, 0, lanes),
+    regressedGap: momentsOf(regressedGap, 0, lanes),
     regressed: momentsOf(regressedUpper, 0, lanes),
     halfInner: momentsOf(halfUpper, 0, lanes),
     plain: momentsOf(plain, 0, lanes),

@@ -1,4 +1,5 @@
 import { Argument, Command, CommanderError } from 'commander';
+import { version } from '../index.js';
 import { UPPER_METHODS } from './arguments.js';
 import { type CheckFlags, checkCommand } from './check-command.js';
 import { fromCommander } from './command-line-mistake.js';
@@ -6,7 +7,6 @@ import { exitCodes } from './exit-codes.js';
 import { refuse } from './speak.js';
 import type { ValueFlags } from './value-arguments.js';
 import { valueCommand } from './value-command.js';
-import { programVersion } from './version.js';
 
 const EXIT_CODES = `
 Exit codes:
@@ -39,7 +39,7 @@ function build(finish: (exitCode: number) => void): Command {
     .description(
       'Values early-exercise rights on many uncertain drivers: a scenario file goes in, a bracket comes out.',
     )
-    .version(programVersion(), '--version', 'print the version')
+    .version(version(), '--version', 'print the version')
     .helpOption('--help', 'print this help')
     .helpCommand('help [COMMAND]', 'print the help of a command')
     .addHelpText('after', EXIT_CODES)

@@ -1,23 +1,16 @@
-import { mistake } from '../messages/build.js';
 import { runCommandLine } from './command-line.js';
+import { defectMessage } from './defect-message.js';
 import { exitCodes } from './exit-codes.js';
-import { deliverDocument, remark } from './speak.js';
+import { deliverDocument, remark, showMessages } from './speak.js';
 import { tolerateClosedPipes } from './terminal.js';
 
-/** Says that this program failed. Nothing but a defect of ours is ever thrown up to here. */
+/** Says that this program failed. */
 function confess(defect: unknown, json: boolean): void {
-  const reason = defect instanceof Error ? defect.message : String(defect);
-  remark(`tarry failed: ${reason}\nThis is a defect of the program and not of your scenario.`);
+  const message = defectMessage(defect);
+  showMessages([message]);
   if (process.env.TARRY_TRACE === '1' && defect instanceof Error) remark(defect.stack ?? '');
   else remark('With TARRY_TRACE=1 in the environment it also prints where it happened.');
-  if (json) {
-    const message = mistake('defect', {
-      what: reason,
-      why: 'This is a defect of the program and not of your scenario.',
-      mend: 'Please report it, with the scenario and the command.',
-    });
-    deliverDocument({ schemaVersion: 1, status: 'failed', messages: [message] });
-  }
+  if (json) deliverDocument({ schemaVersion: 1, status: 'failed', messages: [message] });
 }
 
 /**

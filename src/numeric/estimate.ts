@@ -10,12 +10,18 @@ export interface MeanEstimate {
   readonly halfWidth95: number | null;
 }
 
+/** An estimate from its value and standard error. */
+export function estimateFrom(value: number, standardError: number | null): MeanEstimate {
+  return { value, standardError, halfWidth95: standardError === null ? null : standardErrorsIn95 * standardError };
+}
+
 /** The mean of independent paths with its standard error and the half-width of its 95% interval. */
 export function estimateOf(moments: Moments): MeanEstimate {
-  const standardError = standardErrorOf(moments);
-  return {
-    value: moments.mean,
-    standardError,
-    halfWidth95: standardError === null ? null : standardErrorsIn95 * standardError,
-  };
+  return estimateFrom(moments.mean, standardErrorOf(moments));
+}
+
+/** Standard error of the difference of two independent estimates; null if one is unknown. */
+export function jointError(a: MeanEstimate, b: MeanEstimate): number | null {
+  if (a.standardError === null || b.standardError === null) return null;
+  return Math.sqrt(a.standardError * a.standardError + b.standardError * b.standardError);
 }

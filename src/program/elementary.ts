@@ -181,31 +181,10 @@ export function normalQuantile(p: number): number {
  *
  * exp(exponent * log(base)) is exact enough for formulas, and cheap; zero to a positive power is 0, to a negative one
  * Infinity, and every base that is not negative has the power 0 equal to 1. A negative base gives NaN even for a whole
- * exponent: a rule that flips with the last digit of an exponent is no rule. Whole constants belong to `integerPower`.
+ * exponent: a rule that flips with the last digit of an exponent is no rule. Whole constants are compiled
+ * to multiplications instead.
  * @error relative at most (1 + 1.5 |exponent * log(base)|) 2^-52
  */
 export function power(base: number, exponent: number): number {
   return exponent === 0 && base >= 0 ? 1 : exponentialTimes(exponent * log(base), 1);
-}
-
-/**
- * A power with a whole exponent from -64 to 64, known when the program is compiled.
- *
- * Binary powering from the lowest digit up: few multiplications, signs come out right, and small powers of whole numbers
- * are exact. Negative exponents divide once, at the end; exponent 0 gives 1 whatever the base.
- * @error relative at most |exponent| 2^-53 (half the last place for each multiplication or division that rounds),
- *   while base^|exponent| is neither infinite nor subnormal
- * @fails RangeError on an exponent that is not whole or beyond 64: the compiler must not let one through.
- */
-export function integerPower(base: number, exponent: number): number {
-  let count = Math.abs(exponent);
-  if (!(count <= 64 && Math.floor(count) === count)) throw new RangeError(`no whole exponent up to 64: ${exponent}`);
-  let result = 1;
-  let square = base;
-  while (count > 0) {
-    if ((count & 1) === 1) result = result * square;
-    count >>= 1;
-    if (count > 0) square = square * square;
-  }
-  return exponent < 0 ? 1 / result : result;
 }

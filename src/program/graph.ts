@@ -107,7 +107,7 @@ export class Graph {
     if (operation === 'multiply') return right === 1 ? a! : left === 1 ? b! : null;
     if (operation === 'divide') return right === 1 ? a! : null;
     if (operation === 'minimum' || operation === 'maximum') return a === b ? a! : null;
-    if (operation === 'select') return left !== null ? (left !== 0 ? b! : c!) : b === c ? b! : null;
+    if (operation === 'select' && left !== null && !Number.isNaN(left)) return left !== 0 ? b! : c!;
     return null;
   }
 

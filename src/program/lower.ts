@@ -21,8 +21,7 @@ const binaryOperations: Partial<Record<BinaryOperator, Operation>> = {
   '<': 'less',
   '<=': 'lessOrEqual',
   '==': 'equal',
-  and: 'and',
-  or: 'or',
+  and: 'multiply',
 };
 
 const unaryFunctions: Readonly<Record<string, Operation>> = {
@@ -45,7 +44,9 @@ export function lower(expression: Expression, graph: Graph, meanings: Meanings):
     case 'member':
       return meanings.family(expression.family)[constantInteger(graph, recurse(expression.index)) - 1]!;
     case 'unary':
-      return graph.apply(expression.operator === '-' ? 'negate' : 'not', recurse(expression.operand));
+      return expression.operator === '-'
+        ? graph.apply('negate', recurse(expression.operand))
+        : not(graph, recurse(expression.operand));
     case 'binary':
       return lowerBinary(expression.operator, recurse(expression.left), recurse(expression.right), graph);
     case 'call':
@@ -58,8 +59,14 @@ function lowerBinary(operator: BinaryOperator, left: Node, right: Node, graph: G
   if (operation !== undefined) return graph.apply(operation, left, right);
   if (operator === '>') return graph.apply('less', right, left);
   if (operator === '>=') return graph.apply('lessOrEqual', right, left);
-  if (operator === '!=') return graph.apply('not', graph.apply('equal', left, right));
+  if (operator === '!=') return not(graph, graph.apply('equal', left, right));
+  if (operator === 'or') return graph.subtract(graph.add(left, right), graph.multiply(left, right));
   return lowerPower(graph, left, right);
+}
+
+/** Conditions are 1 or 0, so the logical words are sums and products. */
+function not(graph: Graph, condition: Node): Node {
+  return graph.subtract(graph.constant(1), condition);
 }
 
 /** Whole exponents by repeated multiplication, ½ by the square root, all others through the logarithm. */

@@ -1,8 +1,8 @@
 /**
  * The operations of a program: the whole instruction set, in one table.
  *
- * A condition is 1 or 0. `minimum` and `maximum` are the plain comparisons below, so an argument that is not a number
- * can vanish in them: whoever sorts or compares must have checked that the drivers are finite.
+ * A condition is 1 or 0, or not a number when what it compares is not: whatever is not a number stays so through every
+ * operation, `minimum`, `maximum`, comparisons and `select` included, so that it cannot vanish before it is noticed.
  */
 export const operations = {
   copy: { code: 0, arity: 1 },
@@ -23,13 +23,10 @@ export const operations = {
   less: { code: 15, arity: 2 },
   lessOrEqual: { code: 16, arity: 2 },
   equal: { code: 17, arity: 2 },
-  and: { code: 18, arity: 2 },
-  or: { code: 19, arity: 2 },
-  not: { code: 20, arity: 1 },
-  select: { code: 21, arity: 3 },
+  select: { code: 18, arity: 3 },
 } as const;
 
 export type Operation = keyof typeof operations;
 
 /** Operations whose two operands may change places without changing a bit of the result. */
-export const commutative: ReadonlySet<Operation> = new Set(['add', 'multiply', 'equal', 'and', 'or']);
+export const commutative: ReadonlySet<Operation> = new Set(['add', 'multiply', 'minimum', 'maximum', 'equal']);

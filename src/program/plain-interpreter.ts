@@ -2,7 +2,7 @@ import { exp, log, normalCumulative, normalQuantile, power } from './elementary.
 import type { Interpreter, LoadedProgram } from './interpreter.js';
 import { type Operation, operations } from './operations.js';
 import { blockLanes, instructionWidth, type Program } from './program.js';
-import { applyScalar } from './scalar.js';
+import { applyScalar, equal, less, lessOrEqual, select } from './scalar.js';
 import { drawUniforms, type StreamKey } from './stream.js';
 
 const operationOfCode = Object.keys(operations) as Operation[];
@@ -196,18 +196,10 @@ function runInstruction(
       for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! / m[b + i * bStride]!;
       break;
     case operations.minimum.code:
-      for (let i = 0; i < lanes; i++) {
-        const x = m[a + i * aStride]!;
-        const y = m[b + i * bStride]!;
-        m[out + i] = y < x ? y : x;
-      }
+      for (let i = 0; i < lanes; i++) m[out + i] = Math.min(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.maximum.code:
-      for (let i = 0; i < lanes; i++) {
-        const x = m[a + i * aStride]!;
-        const y = m[b + i * bStride]!;
-        m[out + i] = x < y ? y : x;
-      }
+      for (let i = 0; i < lanes; i++) m[out + i] = Math.max(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.power.code:
       for (let i = 0; i < lanes; i++) m[out + i] = power(m[a + i * aStride]!, m[b + i * bStride]!);
@@ -234,26 +226,18 @@ function runInstruction(
       for (let i = 0; i < lanes; i++) m[out + i] = normalCumulative(m[a + i * aStride]!);
       break;
     case operations.less.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! < m[b + i * bStride]! ? 1 : 0;
+      for (let i = 0; i < lanes; i++) m[out + i] = less(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.lessOrEqual.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! <= m[b + i * bStride]! ? 1 : 0;
+      for (let i = 0; i < lanes; i++) m[out + i] = lessOrEqual(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.equal.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! === m[b + i * bStride]! ? 1 : 0;
-      break;
-    case operations.and.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! !== 0 && m[b + i * bStride]! !== 0 ? 1 : 0;
-      break;
-    case operations.or.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! !== 0 || m[b + i * bStride]! !== 0 ? 1 : 0;
-      break;
-    case operations.not.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! === 0 ? 1 : 0;
+      for (let i = 0; i < lanes; i++) m[out + i] = equal(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.select.code:
-      for (let i = 0; i < lanes; i++)
-        m[out + i] = m[a + i * aStride]! !== 0 ? m[b + i * bStride]! : m[c + i * cStride]!;
+      for (let i = 0; i < lanes; i++) {
+        m[out + i] = select(m[a + i * aStride]!, m[b + i * bStride]!, m[c + i * cStride]!);
+      }
       break;
     default:
       throw new Error(`no instruction has code ${code}`);

@@ -19,9 +19,9 @@ export function applyScalar(operation: Operation, a: number, b: number, c: numbe
     case 'divide':
       return a / b;
     case 'minimum':
-      return b < a ? b : a;
+      return Math.min(a, b);
     case 'maximum':
-      return a < b ? b : a;
+      return Math.max(a, b);
     case 'power':
       return power(a, b);
     case 'negate':
@@ -39,18 +39,32 @@ export function applyScalar(operation: Operation, a: number, b: number, c: numbe
     case 'normalCumulative':
       return normalCumulative(a);
     case 'less':
-      return a < b ? 1 : 0;
+      return less(a, b);
     case 'lessOrEqual':
-      return a <= b ? 1 : 0;
+      return lessOrEqual(a, b);
     case 'equal':
-      return a === b ? 1 : 0;
-    case 'and':
-      return a !== 0 && b !== 0 ? 1 : 0;
-    case 'or':
-      return a !== 0 || b !== 0 ? 1 : 0;
-    case 'not':
-      return a === 0 ? 1 : 0;
+      return equal(a, b);
     case 'select':
-      return a !== 0 ? b : c;
+      return select(a, b, c);
   }
+}
+
+/** 1 or 0; not a number if an operand is not. */
+export function less(a: number, b: number): number {
+  return a < b ? 1 : a >= b ? 0 : Number.NaN;
+}
+
+/** 1 or 0; not a number if an operand is not. */
+export function lessOrEqual(a: number, b: number): number {
+  return a <= b ? 1 : a > b ? 0 : Number.NaN;
+}
+
+/** 1 or 0; not a number if an operand is not. */
+export function equal(a: number, b: number): number {
+  return a === b ? 1 : Number.isNaN(a) || Number.isNaN(b) ? Number.NaN : 0;
+}
+
+/** `whenTrue` for a condition that is not 0, `otherwise` for 0; not a number if the condition is not. */
+export function select(condition: number, whenTrue: number, otherwise: number): number {
+  return condition === 0 ? otherwise : Number.isNaN(condition) ? Number.NaN : whenTrue;
 }

@@ -61,16 +61,6 @@ function besideBracket(record: RunRecord): BoundEstimate[] {
   return record.uppers.filter((bound) => bound.method !== own.method);
 }
 
-/**
- * Between which two estimates the gap lies. It is estimated on the paths of the one-step martingale, where it is the
- * bracket's own gap unless another method makes the bracket.
- */
-function gapWords({ lower, upper, gap }: RunRecord): string {
-  const difference = upper.value - lower.value;
-  const isOwn = Math.abs(difference - gap.value) <= 1e-9 * Math.max(1, Math.abs(upper.value));
-  return isOwn ? 'upper bound less lower bound' : 'one-step martingale against the fitted rule';
-}
-
 /** The bounds and their gap as a table, with the meaning of its columns. */
 export function boundsText(record: RunRecord, width: number, style: Style): string {
   const otherName = record.decidedBy === 'holder' ? 'another upper bound' : 'another lower bound';
@@ -81,7 +71,7 @@ export function boundsText(record: RunRecord, width: number, style: Style): stri
         boundRow('lower bound', record.lower),
         boundRow('upper bound', record.upper),
         ...besideBracket(record).map((bound) => boundRow(otherName, bound)),
-        estimateRow('gap', record.gap, '', gapWords(record)),
+        estimateRow('gap', record.gap, '', 'upper bound less lower bound'),
       ],
       rightColumns: [1, 2, 3],
     },

@@ -21,11 +21,12 @@ export function planText(record: RunRecord, width: number): string {
   if (pilot === null) {
     sentences.push('Every count was given; there was no pilot.');
   } else {
-    const decimals = decimalsFor(Math.min(pilot.expectedWidth, pilot.wantedWidth));
+    const decimals = decimalsFor(Math.min(pilot.expectedWidth, pilot.wantedWidth ?? pilot.expectedWidth));
     const money = printable(record.scenario.money);
+    const wanted = pilot.wantedWidth === null ? '' : ` where ${fixed(pilot.wantedWidth, decimals)} was wanted`;
     const reached = record.bracket95.high - record.bracket95.low;
     sentences.push(
-      `The pilot (${counted(pilot.outerPathCount, 'path')}) expected a bracket ${fixed(pilot.expectedWidth, decimals)} ${money} wide where ${fixed(pilot.wantedWidth, decimals)} was wanted; it became ${fixed(reached, decimals)}.`,
+      `The pilot (${counted(pilot.outerPathCount, 'path')}) expected a bracket ${fixed(pilot.expectedWidth, decimals)} ${money} wide${wanted}; it became ${fixed(reached, decimals)}.`,
     );
   }
   return paragraph(sentences.join(' '), width);

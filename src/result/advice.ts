@@ -1,5 +1,6 @@
 import { advice } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
+import { jointError } from '../numeric/estimate.js';
 import type { BoundEstimate, DateFinding, Estimate, Plan } from './record.js';
 
 /** The measures of a finished run that may cast doubt on it. */
@@ -11,7 +12,6 @@ export interface Measures {
   readonly lower: BoundEstimate;
   readonly upper: BoundEstimate;
   readonly uppers: readonly BoundEstimate[];
-  /** Martingale bound and rule of one set of paths, in the decider's sign: the first cannot fall below the second. */
   readonly gap: Estimate;
   readonly bracketWidth: number;
   /** Null when fixed counts were asked for instead of a width. */
@@ -97,7 +97,7 @@ function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
   const ruled = decidedBy === 'holder' ? lower : upper;
   const ordered = (bound: BoundEstimate) =>
     decidedBy === 'holder' ? ruled.value - bound.value : bound.value - ruled.value;
-  const crossed = uppers.filter((bound) => ordered(bound) > crossingErrors * jointError(bound, ruled));
+  const crossed = uppers.filter((bound) => ordered(bound) > crossingErrors * (jointError(bound, ruled) ?? 0));
   if (crossed.length === 0) return { passed: 'No bound crosses another beyond noise.' };
   return {
     doubt: advice('crossed-bounds', {
@@ -107,11 +107,6 @@ function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
       evidence: { lower: lower.value, uppers: uppers.map(({ method, value }) => ({ method, value })) },
     }),
   };
-}
-
-/** Standard error of a difference of two estimates, taken as independent. */
-function jointError(a: Estimate, b: Estimate): number {
-  return Math.sqrt((a.standardError ?? 0) ** 2 + (b.standardError ?? 0) ** 2);
 }
 
 function effort({ plan, lower, upper }: Measures): Finding {

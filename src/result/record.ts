@@ -41,7 +41,8 @@ export interface PilotFinding {
   readonly gap: number;
   /** Width of the bracket that the plan is expected to reach, in money. */
   readonly expectedWidth: number;
-  readonly wantedWidth: number;
+  /** Null when a budget or fixed outer paths were asked for instead of a width. */
+  readonly wantedWidth: number | null;
 }
 
 /** The fitted rule at one date, as far as a reader needs it. */

@@ -1,6 +1,6 @@
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
-import type { Forecast } from '../result/record.js';
+import type { Forecast, Plan } from '../result/record.js';
 import type { Programs } from '../rule/programs.js';
 import type { Method } from '../scenario/model.js';
 import { defaultFitPathCount } from './fit-size.js';
@@ -53,4 +53,28 @@ export function judgeCounts(programs: Programs, counts: ForecastCounts, forecast
     );
   }
   return messages;
+}
+
+/** Mistakes of a plan that was handed in to be replayed: counts that no run can have had. */
+export function judgePlan(plan: Plan): Message[] {
+  const isNested = plan.upper === 'andersen-broadie';
+  const least: Record<string, number> = {
+    fitPathCount: 1,
+    outerPathCount: 2,
+    innerPointCount: 1,
+    nestedOuterPathCount: isNested ? 2 : 0,
+    nestedInnerPathCount: isNested ? 1 : 0,
+  };
+  const wrong = Object.entries(least).filter(([name, fewest]) => {
+    const count = plan[name as keyof Plan] as number;
+    return !(Number.isSafeInteger(count) && count >= fewest);
+  });
+  return wrong.map(([name, fewest]) =>
+    mistake('plan-does-not-fit', {
+      what: `The plan's ${name} is ${String(plan[name as keyof Plan])}; it must be a whole number from ${fewest} up.`,
+      why: 'A plan replays the counts of an earlier run of this program; no run can have had this one.',
+      mend: 'Take the `plan` of a record as it is, or leave the plan out.',
+      evidence: { name, fewest },
+    }),
+  );
 }

@@ -2,9 +2,17 @@ import { quantileSorted } from 'simple-statistics';
 import { type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
 import type { NestedSums } from '../bounds/nested-paths.js';
 import type { OuterSums } from '../bounds/outer-paths.js';
-import { estimateOf } from '../numeric/estimate.js';
+import { estimateFrom, estimateOf, jointError } from '../numeric/estimate.js';
 import { judge } from '../result/advice.js';
-import type { BoundEstimate, BoundMethod, DateFinding, PilotFinding, Plan, RunRecord } from '../result/record.js';
+import type {
+  BoundEstimate,
+  BoundMethod,
+  DateFinding,
+  Estimate,
+  PilotFinding,
+  Plan,
+  RunRecord,
+} from '../result/record.js';
 import type { StepFit } from '../rule/backward-induction.js';
 import type { Programs } from '../rule/programs.js';
 import type { CheckedScenario } from '../scenario/model.js';
@@ -43,7 +51,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   const [lower, upper] = sign === 1 ? [ruled, chosen] : [chosen, ruled];
   const bracket95 = bracketOf(lower, upper);
   const dates = dateFindings(findings);
-  const gap = estimateOf(outer.gap);
+  const gap = gapOf(findings, chosen.method);
   const basisIsAutomatic = model.method.basis === 'auto';
   const wantedWidth = wantedWidthOf(findings);
   const judgement = judge({
@@ -54,8 +62,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
     lower,
     upper,
     uppers: martingales,
-    gap:
-      chosen.method === 'one-step' ? gap : { value: upper.value - lower.value, standardError: null, halfWidth95: null },
+    gap,
     bracketWidth: bracket95.high - bracket95.low,
     wantedWidth,
     decidedBy: model.contract.decidedBy,
@@ -88,6 +95,14 @@ export function makeRecord(findings: RunFindings): RunRecord {
   };
 }
 
+/** Gap of the bracket's own two bounds: path by path where both stand on the same paths. */
+function gapOf({ outer, nested }: RunFindings, method: BoundMethod): Estimate {
+  if (method === 'regressed') return estimateOf(outer.regressedGap);
+  if (method !== 'andersen-broadie' || nested === null) return estimateOf(outer.gap);
+  const [upper, lower] = [estimateOf(nested.upper), estimateOf(outer.lower)];
+  return estimateFrom(upper.value - lower.value, jointError(upper, lower));
+}
+
 function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
   const { times, todayIsDecisionDate, columns, sign } = programs;
   const last = times.length - 1;
@@ -117,9 +132,10 @@ function exerciseTimeQuantiles(outer: OuterSums, { times }: Programs): RunRecord
   };
 }
 
+/** The width that was asked for, in money; null when fixed counts or a budget were asked for instead. */
 function wantedWidthOf({ scenario, pilot, outer, programs }: RunFindings): number | null {
   const { bracketWidth, outerPathCount, innerPointCount } = scenario.model.method;
-  if (pilot !== null) return outerPathCount === null ? pilot.wantedWidth : null;
+  if (pilot !== null) return pilot.wantedWidth;
   if (outerPathCount !== null || innerPointCount !== null) return null;
   return 'money' in bracketWidth
     ? bracketWidth.money

@@ -77,7 +77,7 @@ export async function choosePlan(
       upperStandardDeviation: pilotModel.upperStandardDeviation,
       gap: sums.gap.mean,
       expectedWidth: expectedWidth(pilotModel, chosen),
-      wantedWidth,
+      wantedWidth: budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
     },
   };
 }

@@ -1,10 +1,11 @@
 import type { NestedSums } from '../bounds/nested-paths.js';
 import type { OuterSums } from '../bounds/outer-paths.js';
+import type { Plan } from '../result/record.js';
 import { NotFinite } from '../rule/not-finite.js';
 import type { Executor } from '../workers/executor.js';
 import type { JobContext } from '../workers/jobs.js';
 import { runNested, runOuter } from './bounds-stage.js';
-import { countsBeforePilot, judgeCounts } from './counts.js';
+import { countsBeforePilot, judgeCounts, judgePlan } from './counts.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
 import { openContext } from './fit-size.js';
 import { runFit } from './fit-stage.js';
@@ -31,6 +32,8 @@ export async function valueScenario(
   const { scenario, programs } = outcome.prepared;
   const workerCount = options.workers ?? defaultWorkerCount(environment);
   const counts = options.plan ?? countsBeforePilot(programs, scenario.model.method);
+  const planMessages = options.plan === undefined ? [] : judgePlan(options.plan);
+  if (planMessages.length > 0) return { kind: 'refused', messages: planMessages };
   const messages = judgeCounts(programs, counts, forecastOf(programs, counts, workerCount, environment.memoryBytes));
   if (messages.length > 0) return { kind: 'refused', messages };
 
@@ -103,7 +106,7 @@ async function runStages(
 async function runBounds(
   executor: Executor,
   programs: Prepared['programs'],
-  plan: import('../result/record.js').Plan,
+  plan: Plan,
   { signal, onProgress }: StageOptions,
 ): Promise<{ outer: OuterSums; nested: NestedSums | null; isComplete: boolean }> {
   const outer = await runOuter(executor, programs, 'outer', plan, signal, onProgress);

@@ -42,7 +42,7 @@ export const recordShape = z.looseObject({
   seed: z.string(),
   decidedBy: z.enum(['holder', 'issuer']),
   plan: planShape,
-  pilot: z.looseObject({ expectedWidth: z.number(), wantedWidth: z.number() }).nullable(),
+  pilot: z.looseObject({ expectedWidth: z.number(), wantedWidth: z.number().nullable() }).nullable(),
   lower: bound,
   upper: bound,
   uppers: z.array(bound),

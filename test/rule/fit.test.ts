@@ -1,22 +1,22 @@
 import { expect, test } from 'vitest';
-import { fit } from '../fitted.js';
+import { fitted } from '../fitted.js';
 import { lots } from '../scenario-texts.js';
 
 test('the increment takes out most of the spread of the next value, at every date', async () => {
-  const { fits } = await fit(lots(), 16_384);
+  const { fits } = await fitted(lots(), 16_384);
   for (const { spread, controlledSpread } of fits) expect(controlledSpread).toBeLessThan(0.35 * spread);
 });
 
 test('today holds one state: the regression keeps the constant alone and says so', async () => {
-  const { fits, programs } = await fit(lots(), 4096);
+  const { fits, programs } = await fitted(lots(), 4096);
   expect(fits[0]!.kept).toHaveLength(1);
   expect(fits[0]!.dropped).toHaveLength(programs.columns.length - 1);
   expect(fits[0]!.explainedShare).toBeCloseTo(0, 6);
 });
 
 test('a driver that is added leaves the draws of the others as they were', async () => {
-  const alone = await fit(lots({ count: 1, payoff: 'max(0, lot[1] - 100)' }), 512);
-  const together = await fit(
+  const alone = await fitted(lots({ count: 1, payoff: 'max(0, lot[1] - 100)' }), 512);
+  const together = await fitted(
     lots({
       count: 1,
       payoff: 'max(0, lot[1] - 100)',
@@ -33,8 +33,8 @@ test('a driver that is added leaves the draws of the others as they were', async
 });
 
 test('the fitted continuation value today does not depend on the sign convention: an issuer of the negative decides alike', async () => {
-  const holder = await fit(lots({ count: 1, payoff: 'lot[1] - 100', atExpiry: 'lapse' }), 4096);
-  const issuer = await fit(lots({ count: 1, payoff: '100 - lot[1]', atExpiry: 'lapse', decidedBy: 'issuer' }), 4096);
+  const holder = await fitted(lots({ count: 1, payoff: 'lot[1] - 100', atExpiry: 'lapse' }), 4096);
+  const issuer = await fitted(lots({ count: 1, payoff: '100 - lot[1]', atExpiry: 'lapse', decidedBy: 'issuer' }), 4096);
   expect([...issuer.rule.continuation]).toEqual([...holder.rule.continuation]);
   expect([...issuer.rule.integrands]).toEqual([...holder.rule.integrands]);
 });

@@ -1,7 +1,7 @@
 import { expect, test } from 'vitest';
 import type { Job, JobReply } from '#built/workers/jobs.js';
 import { createThreadExecutor } from '#built/workers/threads.js';
-import { fit } from '../fitted.js';
+import { fitted } from '../fitted.js';
 import { recordOf } from '../run-value.js';
 import { lots } from '../scenario-texts.js';
 
@@ -19,7 +19,7 @@ test('the calling thread and 1, 2 and 5 workers give the same bytes', async () =
 });
 
 test('a thread that dies is replaced and its job done again, with the same result', async () => {
-  const { context, run } = await fit(lots(), 4096);
+  const { context, run } = await fitted(lots(), 4096);
   const job: Job = {
     kind: 'outer',
     purpose: 'outer',
@@ -42,7 +42,7 @@ test('a thread that dies is replaced and its job done again, with the same resul
 });
 
 test('a defect inside a job is thrown, not tried again as if its thread had died', async () => {
-  const { context } = await fit(lots(), 1024);
+  const { context } = await fitted(lots(), 1024);
   const executor = createThreadExecutor(context, 1);
   try {
     await expect(
