@@ -1,10 +1,5 @@
-import {
-  mergeOuterSums,
-  noOuterSums,
-  type OuterPurpose,
-  type OuterSums,
-  runOuterPaths,
-} from '#built/bounds/outer-paths.js';
+import { type OuterPurpose, runOuterPaths } from '#built/bounds/outer-paths.js';
+import { mergeOuterSums, noOuterSums, type OuterSums } from '#built/bounds/outer-sums.js';
 import { fitRule, type StepFit } from '#built/rule/backward-induction.js';
 import { Block } from '#built/rule/block.js';
 import { buildPrograms, type Programs } from '#built/rule/programs.js';

@@ -1,60 +1,11 @@
-import { type Moments, mergeMoments, momentsOf, noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-sweeps.js';
 import type { Rule } from '../rule/rule.js';
+import { type Choice, type InnerMeans, OuterLanes } from './outer-lanes.js';
+import { mergeOuterSums, noOuterSums, type OuterSums } from './outer-sums.js';
 
 /** Which draws a set of outer paths uses. */
 export type OuterPurpose = 'outer' | 'pilot';
-
-/**
- * Sums over outer paths, in the decider's sign: `lower` is what the rule brings and `upper` what hindsight with the
- * martingale as its price would bring.
- */
-export interface OuterSums {
-  /** Payoff where the rule exercises, less the martingale there. */
-  readonly lower: Moments;
-  /** Largest payoff less martingale on the path: at least `lower` on every path. */
-  readonly upper: Moments;
-  readonly gap: Moments;
-  /** Regressed maximum less `lower`. */
-  readonly regressedGap: Moments;
-  /** The same maximum with the regressed martingale, which needs no inner points. */
-  readonly regressed: Moments;
-  /** Upper with the first half of the inner points: shows how fast inner noise still falls. */
-  readonly halfInner: Moments;
-  /** What the rule brings without any martingale. */
-  readonly plain: Moments;
-  /** Paths on which the rule exercises at each date of the grid. */
-  readonly exerciseCounts: readonly number[];
-  readonly neverCount: number;
-}
-
-export const noOuterSums = (dateCount: number): OuterSums => ({
-  lower: noMoments,
-  upper: noMoments,
-  gap: noMoments,
-  regressedGap: noMoments,
-  regressed: noMoments,
-  halfInner: noMoments,
-  plain: noMoments,
-  exerciseCounts: new Array<number>(dateCount).fill(0),
-  neverCount: 0,
-});
-
-/** Adds the sums of two stretches of paths, the earlier first. */
-export function mergeOuterSums(a: OuterSums, b: OuterSums): OuterSums {
-  return {
-    lower: mergeMoments(a.lower, b.lower),
-    upper: mergeMoments(a.upper, b.upper),
-    gap: mergeMoments(a.gap, b.gap),
-    regressedGap: mergeMoments(a.regressedGap, b.regressedGap),
-    regressed: mergeMoments(a.regressed, b.regressed),
-    halfInner: mergeMoments(a.halfInner, b.halfInner),
-    plain: mergeMoments(a.plain, b.plain),
-    exerciseCounts: a.exerciseCounts.map((count, date) => count + b.exerciseCounts[date]!),
-    neverCount: a.neverCount + b.neverCount,
-  };
-}
 
 /**
  * Both bounds on one set of outer paths, with the one-step martingale of the fitted value.
@@ -93,48 +44,26 @@ function runBlock(
   index: number,
   firstPath: number,
 ): OuterSums {
-  const { layout, times, polynomialNames, todayIsDecisionDate, floor } = block.programs;
-  const lanes = block.lanes;
-  const polynomialCount = polynomialNames.length;
+  const { layout, times, polynomialNames, todayIsDecisionDate } = block.programs;
+  const { lanes } = block;
   const last = times.length - 1;
-  let free = layout.stage;
-  const savedNext = free;
-  free += block.driverCount;
-  const nextIntegrands = free;
-  free += polynomialCount;
-  const [hold, outerValue, inner, regressedStep] = [free, free + 1, free + 2, free + 3];
+  const savedNext = layout.stage;
+  const nextIntegrands = savedNext + block.driverCount;
+  const hold = nextIntegrands + polynomialNames.length;
+  const [outerValue, innerValue, regressedStep] = [hold + 1, hold + 2, hold + 3];
+  const paths = new OuterLanes(block.programs, lanes);
 
-  const martingale = new Float64Array(lanes);
-  const halfMartingale = new Float64Array(lanes);
-  const regressed = new Float64Array(lanes);
-  const lower = new Float64Array(lanes);
-  const plain = new Float64Array(lanes);
-  const upper = new Float64Array(lanes).fill(-Infinity);
-  const halfUpper = new Float64Array(lanes).fill(-Infinity);
-  const regressedUpper = new Float64Array(lanes).fill(-Infinity);
-  const exercisedAt = new Int32Array(lanes).fill(-1);
-
-  const decide = (date: number, amount: Float64Array, isLast: boolean) => {
-    const continuation = block.column(hold);
-    const payoff = block.column(layout.payoff);
-    for (let lane = 0; lane < lanes; lane++) {
-      const brings = amount[lane]!;
-      upper[lane] = Math.max(upper[lane]!, brings - martingale[lane]!);
-      halfUpper[lane] = Math.max(halfUpper[lane]!, brings - halfMartingale[lane]!);
-      regressedUpper[lane] = Math.max(regressedUpper[lane]!, brings - regressed[lane]!);
-      if (exercisedAt[lane] === -1 && (isLast || brings > continuation[lane]!)) {
-        lower[lane] = brings - martingale[lane]!;
-        plain[lane] = brings;
-        const isUnused = isLast && (brings > payoff[lane]! || (floor !== null && brings <= floor));
-        exercisedAt[lane] = isUnused ? last + 1 : date;
-      }
-    }
-  };
+  const choiceAt = (date: number): Choice => ({
+    date,
+    brings: block.column(date === last ? layout.terminal : layout.payoff).slice(),
+    payoff: block.column(layout.payoff).slice(),
+    continuation: block.column(hold).slice(),
+  });
 
   block.restart();
   block.evaluate(0, rule, firstPath);
   block.continuation(0, rule, hold);
-  if (todayIsDecisionDate) decide(0, block.column(layout.payoff), false);
+  if (todayIsDecisionDate) paths.choose(choiceAt(0));
   block.ruleIntegrands(0, rule, layout.integrands);
   for (let date = 0; date < last; date++) {
     const arrives = date + 1;
@@ -147,47 +76,17 @@ function runBlock(
     block.evaluate(arrives, rule, firstPath);
     block.value(arrives, rule, hold, outerValue);
     if (arrives < last) block.ruleIntegrands(arrives, rule, nextIntegrands);
-    const amount = Float64Array.from(block.column(arrives === last ? layout.terminal : layout.payoff));
-    const payoff = Float64Array.from(block.column(layout.payoff));
-    const continuation = Float64Array.from(block.column(hold));
+    const choice = choiceAt(arrives);
     block.interpreter.copy(layout.next, savedNext, block.driverCount);
 
-    const { mean, halfMean } = innerMeans(block, rule, purpose === 'outer' ? 'inner' : 'pilot inner', innerPointCount, {
-      index,
-      firstPath,
-      date,
-      value: inner,
-      hold,
-    });
-    const value = block.column(outerValue);
-    const step = block.column(regressedStep);
-    for (let lane = 0; lane < lanes; lane++) {
-      martingale[lane] = martingale[lane]! + value[lane]! - mean[lane]!;
-      halfMartingale[lane] = halfMartingale[lane]! + value[lane]! - halfMean[lane]!;
-      regressed[lane] = regressed[lane]! + step[lane]!;
-    }
-    block.column(hold).set(continuation);
-    block.column(layout.payoff).set(payoff);
-    decide(arrives, amount, arrives === last);
+    const place = { index, firstPath, date, value: innerValue, hold };
+    const means = innerMeans(block, rule, purpose === 'outer' ? 'inner' : 'pilot inner', innerPointCount, place);
+    paths.move(block.column(outerValue), means, block.column(regressedStep));
+    paths.choose(choice);
     block.interpreter.copy(savedNext, layout.next, block.driverCount);
-    block.interpreter.copy(nextIntegrands, layout.integrands, polynomialCount);
+    block.interpreter.copy(nextIntegrands, layout.integrands, polynomialNames.length);
   }
-
-  const gap = upper.map((value, lane) => value - lower[lane]!);
-  const regressedGap = regressedUpper.map((value, lane) => value - lower[lane]!);
-  const exerciseCounts = new Array<number>(times.length + 1).fill(0);
-  for (const date of exercisedAt) exerciseCounts[date] = exerciseCounts[date]! + 1;
-  return {
-    lower: momentsOf(lower, 0, lanes),
-    upper: momentsOf(upper, 0, lanes),
-    gap: momentsOf(gap, 0, lanes),
-    regressedGap: momentsOf(regressedGap, 0, lanes),
-    regressed: momentsOf(regressedUpper, 0, lanes),
-    halfInner: momentsOf(halfUpper, 0, lanes),
-    plain: momentsOf(plain, 0, lanes),
-    exerciseCounts: exerciseCounts.slice(0, times.length),
-    neverCount: exerciseCounts[times.length]!,
-  };
+  return paths.sums();
 }
 
 interface InnerPlace {
@@ -208,7 +107,7 @@ function innerMeans(
   purpose: 'inner' | 'pilot inner',
   pointCount: number,
   place: InnerPlace,
-): { mean: Float64Array; halfMean: Float64Array } {
+): InnerMeans {
   const sum = new Float64Array(block.lanes);
   const half = Math.ceil(pointCount / 2);
   let halfMean = sum;

@@ -1,6 +1,6 @@
 import { standardErrorsIn95 } from '../numeric/estimate.js';
 import { varianceOf } from '../numeric/moments.js';
-import type { OuterSums } from './outer-paths.js';
+import type { OuterSums } from './outer-sums.js';
 
 /** Counts of the pilot: enough for spreads to about 3%. */
 export const pilotOuterPathCount = 1024;

@@ -1,5 +1,6 @@
 import { mergeNestedSums, type NestedSums, noNestedSums } from '../bounds/nested-paths.js';
-import { mergeOuterSums, noOuterSums, type OuterPurpose, type OuterSums } from '../bounds/outer-paths.js';
+import type { OuterPurpose } from '../bounds/outer-paths.js';
+import { mergeOuterSums, noOuterSums, type OuterSums } from '../bounds/outer-sums.js';
 import type { Programs } from '../rule/programs.js';
 import type { Executor } from '../workers/executor.js';
 import type { Progress } from './options.js';

@@ -8,7 +8,7 @@ import type { ForecastCounts } from './forecast.js';
 
 const defaultNestedOuterPathCount = 1024;
 /** Inner paths of the nested bound are chosen so that its steps stay near this count, within limits. */
-const nestedStepAim = 40_000_000;
+const nestedStepAim = 12_000_000;
 
 /** Counts that the method fixes or leaves to a fixed default; those of the pilot stay null. */
 export function countsBeforePilot(programs: Programs, method: Method): ForecastCounts {
@@ -22,7 +22,7 @@ export function countsBeforePilot(programs: Programs, method: Method): ForecastC
     outerPathCount: method.outerPathCount,
     innerPointCount: method.innerPointCount,
     nestedOuterPathCount,
-    nestedInnerPathCount: isNested ? (method.nestedInnerPathCount ?? Math.max(16, Math.min(256, affordable))) : 0,
+    nestedInnerPathCount: isNested ? (method.nestedInnerPathCount ?? Math.max(16, Math.min(128, affordable))) : 0,
   };
 }
 

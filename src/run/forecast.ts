@@ -5,8 +5,8 @@ import type { Programs } from '../rule/programs.js';
 import { fitStoreBytes } from './fit-size.js';
 
 /** Resident before any work: the engine, this program's code, and each thread's own engine. Measured, see DEVELOPERS.md. */
-const processBytes = 75e6;
-const threadBytes = 22e6;
+const processBytes = 97e6;
+const threadBytes = 25e6;
 
 /** What a run will need, from its counts alone. */
 export function forecastOf(

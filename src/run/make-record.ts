@@ -1,7 +1,7 @@
 import { quantileSorted } from 'simple-statistics';
 import { type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
 import type { NestedSums } from '../bounds/nested-paths.js';
-import type { OuterSums } from '../bounds/outer-paths.js';
+import type { OuterSums } from '../bounds/outer-sums.js';
 import { estimateFrom, estimateOf, jointError } from '../numeric/estimate.js';
 import { judge } from '../result/advice.js';
 import type {

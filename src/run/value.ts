@@ -1,5 +1,5 @@
 import type { NestedSums } from '../bounds/nested-paths.js';
-import type { OuterSums } from '../bounds/outer-paths.js';
+import type { OuterSums } from '../bounds/outer-sums.js';
 import type { Plan } from '../result/record.js';
 import { NotFinite } from '../rule/not-finite.js';
 import type { Executor } from '../workers/executor.js';

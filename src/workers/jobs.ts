@@ -1,5 +1,6 @@
 import { type NestedSums, runNestedPaths } from '../bounds/nested-paths.js';
-import { type OuterPurpose, type OuterSums, runOuterPaths } from '../bounds/outer-paths.js';
+import { type OuterPurpose, runOuterPaths } from '../bounds/outer-paths.js';
+import type { OuterSums } from '../bounds/outer-sums.js';
 import type { Moments } from '../numeric/moments.js';
 import type { SweepKind } from '../rule/backward-induction.js';
 import { Block } from '../rule/block.js';

@@ -1,0 +1,35 @@
+import { readFileSync } from 'node:fs';
+import { expect, test } from 'vitest';
+import { recordOf } from './run-value.js';
+
+/** What the shipped scenarios are known to be worth, and how narrow their brackets must be with default settings. */
+const known = [
+  // Independent quadrature on aligned logarithmic grids, error at most 0.0001.
+  { file: '01-two-lots.yaml', low: 13.9018, high: 13.9018, width: 0.01 },
+  // Becker, Cheridito & Jentzen (2019), J. Machine Learning Research 20(74), table 1, published interval; from memory.
+  { file: '02-five-lots.yaml', low: 26.138, high: 26.174, width: 0.015 },
+  // Independent convolution on 32,768 points, error below 0.0001; Longstaff & Schwartz (2001), table 1, prints 2.314.
+  { file: '03-floor-price.yaml', low: 2.3141, high: 2.3141, width: 0.015 },
+] as const;
+
+test.each(known)(
+  '$file: the bracket meets what is known, is narrow, and raises no advice',
+  async ({ file, low, high, width }) => {
+    const text = readFileSync(new URL(`../scenarios/${file}`, import.meta.url), 'utf8');
+    const { bracket95, lower, advice } = await recordOf(text, { workers: 2 });
+    expect(bracket95.low).toBeLessThan(high);
+    expect(bracket95.high).toBeGreaterThan(low);
+    expect(bracket95.high - bracket95.low).toBeLessThan(width * lower.value);
+    expect(advice).toEqual([]);
+  },
+);
+
+test('the nested upper bound makes the bracket of the two lots when it is asked for', async () => {
+  const text = readFileSync(new URL('../scenarios/01-two-lots.yaml', import.meta.url), 'utf8');
+  const { bracket95, upper, uppers, lower } = await recordOf(text, { workers: 2, upper: 'andersen-broadie' });
+  expect(upper.method).toBe('andersen-broadie');
+  expect(uppers.map(({ method }) => method)).toEqual(['one-step', 'andersen-broadie', 'regressed']);
+  expect(bracket95.low).toBeLessThan(13.9018);
+  expect(bracket95.high).toBeGreaterThan(13.9018);
+  expect(bracket95.high - bracket95.low).toBeLessThan(0.01 * lower.value);
+});
