@@ -67,7 +67,7 @@ function runBlock(block: Block, rule: Rule, innerPathCount: number, index: numbe
     const exercises = new Uint8Array(lanes);
     if (date === last) exercises.fill(1);
     else if (date > 0 || todayIsDecisionDate) {
-      block.continuation(date, rule, hold);
+      block.continuation(date, rule, hold, firstPath);
       const continuation = block.column(hold);
       for (let lane = 0; lane < lanes; lane++) exercises[lane] = payoff[lane]! > continuation[lane]! ? 1 : 0;
     }
@@ -130,7 +130,7 @@ function continuationValues(
       block.addIncrement(layout.integrands, 1, increments);
       block.step(date, place.firstPath);
       block.evaluate(arrives, rule, place.firstPath);
-      if (arrives < last) block.continuation(arrives, rule, place.hold);
+      if (arrives < last) block.continuation(arrives, rule, place.hold, place.firstPath);
       const brings = block.column(arrives === last ? layout.terminal : layout.payoff);
       const continuation = block.column(place.hold);
       const increment = block.column(increments);

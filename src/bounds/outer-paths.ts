@@ -62,7 +62,7 @@ function runBlock(
 
   block.restart();
   block.evaluate(0, rule, firstPath);
-  block.continuation(0, rule, hold);
+  block.continuation(0, rule, hold, firstPath);
   if (todayIsDecisionDate) paths.choose(choiceAt(0));
   block.ruleIntegrands(0, rule, layout.integrands);
   for (let date = 0; date < last; date++) {
@@ -74,7 +74,7 @@ function runBlock(
     block.addIncrement(layout.integrands, 1, regressedStep);
     block.step(date, firstPath);
     block.evaluate(arrives, rule, firstPath);
-    block.value(arrives, rule, hold, outerValue);
+    block.value(arrives, rule, hold, outerValue, firstPath);
     if (arrives < last) block.ruleIntegrands(arrives, rule, nextIntegrands);
     const choice = choiceAt(arrives);
     block.interpreter.copy(layout.next, savedNext, block.driverCount);
@@ -116,7 +116,7 @@ function innerMeans(
     block.polynomials();
     block.step(place.date, place.firstPath);
     block.evaluate(place.date + 1, rule, place.firstPath);
-    block.value(place.date + 1, rule, place.hold, place.value);
+    block.value(place.date + 1, rule, place.hold, place.value, place.firstPath);
     block.addIncrement(block.programs.layout.integrands, -1, place.value);
     const value = block.column(place.value);
     for (let lane = 0; lane < block.lanes; lane++) sum[lane] = sum[lane]! + value[lane]!;

@@ -1,5 +1,6 @@
 import { standardErrorsIn95 } from '../numeric/estimate.js';
 import { varianceOf } from '../numeric/moments.js';
+import type { UpperMethod } from '../scenario/model.js';
 import type { OuterSums } from './outer-sums.js';
 
 /** Counts of the pilot: enough for spreads to about 3%. */
@@ -40,12 +41,27 @@ export interface Counts {
   readonly innerPointCount: number;
 }
 
-/** Reads spreads and gap off a pilot; inner noise is taken to raise the upper bound as one over the inner count. */
-export function modelOfPilot(sums: OuterSums, innerPointCount: number): PilotModel {
+/**
+ * Reads spreads and gap off a pilot for the upper bound that makes the bracket. Inner noise is taken to raise the
+ * one-step bound as one over the inner count; the regressed bound has none. The nested bound is not part of a pilot: it
+ * is taken to lie no farther from the lower bound than the one-step bound.
+ */
+export function modelOfPilot(sums: OuterSums, innerPointCount: number, method: UpperMethod): PilotModel {
+  const lowerStandardDeviation = Math.sqrt(varianceOf(sums.lower));
+  if (method === 'regressed') {
+    return {
+      lowerStandardDeviation,
+      upperStandardDeviation: Math.sqrt(varianceOf(sums.regressed)),
+      limitGap: sums.regressedGap.mean,
+      gapPerInnerShare: 0,
+      value: (sums.lower.mean + sums.regressed.mean) / 2,
+    };
+  }
   const halfCount = Math.ceil(innerPointCount / 2);
-  const slope = Math.max(0, sums.halfInner.mean - sums.upper.mean) / (1 / halfCount - 1 / innerPointCount);
+  const difference = halfCount < innerPointCount ? Math.max(0, sums.halfInner.mean - sums.upper.mean) : 0;
+  const slope = difference === 0 ? 0 : difference / (1 / halfCount - 1 / innerPointCount);
   return {
-    lowerStandardDeviation: Math.sqrt(varianceOf(sums.lower)),
+    lowerStandardDeviation,
     upperStandardDeviation: Math.sqrt(varianceOf(sums.upper)),
     limitGap: Math.max(0, sums.gap.mean - slope / innerPointCount),
     gapPerInnerShare: slope,
@@ -96,13 +112,15 @@ export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
   ).counts;
 }
 
-/** Outer paths that bring the noise down to what the gap leaves of the aim, or to a quarter of a gap that is too wide. */
+/**
+ * Outer paths that bring the noise down to what the gap leaves of the aim, but not below an eighth of the gap: near the
+ * edge of what the gap allows, paths without end would gain next to nothing.
+ */
 function outerPathsFor(model: PilotModel, innerPointCount: number, wantedWidth: number): number {
   const gap = model.limitGap + model.gapPerInnerShare / innerPointCount;
   const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
-  const left = aim * wantedWidth - gap;
-  const room = left > 0 ? left : gap / 4;
   if (noise === 0) return smallestOuterPathCount;
+  const room = Math.max(aim * wantedWidth - gap, gap / 8);
   return Math.ceil((noise / room) * (noise / room));
 }
 

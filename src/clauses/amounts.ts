@@ -15,12 +15,15 @@ export function decisionSign(contract: Contract): 1 | -1 {
   return contract.decidedBy === 'holder' ? 1 : -1;
 }
 
+/** Turns an amount as the holder receives it into money of today as the party who decides sees it. */
+export function writeScaled(graph: Graph, contract: Contract, amount: Node, discountFactor: Node): Node {
+  const discounted = graph.multiply(amount, discountFactor);
+  return decisionSign(contract) === 1 ? discounted : graph.apply('negate', discounted);
+}
+
 /** Writes payoff and terminal amount, discounted to today, into a graph. */
 export function writeAmounts(graph: Graph, contract: Contract, meanings: Meanings, discountFactor: Node): Amounts {
-  const scale = (node: Node) => {
-    const discounted = graph.multiply(node, discountFactor);
-    return decisionSign(contract) === 1 ? discounted : graph.apply('negate', discounted);
-  };
+  const scale = (node: Node) => writeScaled(graph, contract, node, discountFactor);
   const payoff = scale(lower(contract.payoff.tree, graph, meanings));
   const { atExpiry } = contract;
   if (atExpiry.kind === 'forced') return { payoff, terminal: payoff };

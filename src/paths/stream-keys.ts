@@ -15,6 +15,11 @@ export type Purpose = 'fit' | 'pilot' | 'pilot inner' | 'outer' | 'inner' | 'nes
  * @source the ARC4 generator of the seedrandom package, keyed with the whole text
  */
 export function streamKey(seed: string, purpose: Purpose, innovationName: string): StreamKey {
-  const generator = seedrandom(JSON.stringify([seed, purpose, innovationName]));
+  const generator = seedrandom(asciiText([seed, purpose, innovationName]));
   return { low: generator.int32() >>> 0, high: generator.int32() >>> 0 };
+}
+
+/** JSON in ASCII alone: the package looks at the low byte of each character only, so others must be spelled out. */
+function asciiText(parts: readonly string[]): string {
+  return JSON.stringify(parts).replace(/[^ -~]/g, (character) => `\\u${character.charCodeAt(0).toString(16)}`);
 }

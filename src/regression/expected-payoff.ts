@@ -10,7 +10,7 @@ import type { CheckedModel } from '../scenario/model.js';
  */
 const pairCounts = { oneDriver: 8, severalDrivers: 4 } as const;
 
-/** Drivers beyond which the average would cost more than the whole of the other columns. */
+/** Drivers beyond which the averages would cost several times as much as all other columns together. */
 export const largestDriverCount = 40;
 
 /**

@@ -17,6 +17,8 @@ export interface Measures {
   /** Null when fixed counts were asked for instead of a width. */
   readonly wantedWidth: number | null;
   readonly decidedBy: 'holder' | 'issuer';
+  /** Outer paths on which the rule exercises at all. */
+  readonly exercisedPathCount: number;
 }
 
 /** What the judge says: doubts, each with its number, and the checks that found nothing. */
@@ -35,6 +37,8 @@ const wideGapShare = 0.01;
 /** Outer paths below which the normal interval is not to be trusted; common practice. */
 const fewestOuterPaths = 500;
 const fewestInnerPoints = 8;
+/** Exercised paths below which a mean over them is far from normal; common practice. */
+const fewestExercisedPaths = 100;
 /** Standard errors between crossed bounds that noise does not explain: about one false alarm in 15,000 runs. */
 const crossingErrors = 4;
 
@@ -42,7 +46,7 @@ type Finding = { readonly doubt: Message } | { readonly passed: string };
 
 /** Judges a finished run. */
 export function judge(measures: Measures): Judgement {
-  const findings = [thinFit, rankLoss, wideGap, crossedBounds, effort, width]
+  const findings = [thinFit, rankLoss, wideGap, crossedBounds, effort, rareExercise, width]
     .map((question) => question(measures))
     .filter((found) => found !== null);
   return {
@@ -79,15 +83,17 @@ function rankLoss({ basisIsAutomatic, dates }: Measures): Finding | null {
   };
 }
 
-function wideGap({ gap, lower }: Measures): Finding {
-  const share = gap.value / Math.abs(lower.value);
+function wideGap({ gap, lower, plan, basisIsAutomatic }: Measures): Finding {
+  const share = gap.value === 0 ? 0 : gap.value / Math.abs(lower.value);
   const text = `The gap between the bounds is ${percent(share)} of the value.`;
   if (!(share > wideGapShare)) return { passed: text };
   return {
     doubt: advice('wide-gap', {
       what: text,
       why: 'The gap is what the fitted rule and martingale miss. More outer paths do not close it.',
-      mend: 'Use `basis: auto` or add columns that tell when holding is worth more; raise `counts: { fit: …, inner: … }` under method.',
+      mend: basisIsAutomatic
+        ? `Raise \`counts: { fit: … }\` under method above ${paths(plan.fitPathCount)}, or try \`upper: andersen-broadie\`.`
+        : 'Use `basis: auto`, or add columns that tell when holding is worth more.',
       evidence: { gap: gap.value, share },
     }),
   };
@@ -119,6 +125,26 @@ function effort({ plan, lower, upper }: Measures): Finding {
       why: `Below ${fewestOuterPaths} paths a 95% interval may cover less than 95%; below ${fewestInnerPoints} inner points the upper bound is mostly noise.`,
       mend: 'Leave `counts` under method out, so that a pilot chooses them, or raise `outer` and `inner`.',
       evidence: { outerPathCount: smallest, innerPointCount: plan.innerPointCount },
+    }),
+  };
+}
+
+/**
+ * A payoff that few paths ever reach: what the others would have shown is unknown, and the normal interval too short.
+ * An event that n paths never showed may still have a probability of 3/n (95%, "rule of three").
+ */
+function rareExercise({ lower, exercisedPathCount }: Measures): Finding {
+  if (exercisedPathCount >= fewestExercisedPaths) {
+    return {
+      passed: `The rule exercises on ${paths(exercisedPathCount)} of the ${paths(lower.pathCount)} outer paths.`,
+    };
+  }
+  return {
+    doubt: advice('effort-too-small', {
+      what: `The rule exercises on only ${paths(exercisedPathCount)} of the ${paths(lower.pathCount)} outer paths.`,
+      why: `The value rests on rare paths: a payoff with a probability up to ${percent(3 / lower.pathCount)} may not have shown at all, and the 95% interval may be too narrow and too low.`,
+      mend: 'Raise `counts: { outer: … }` under method until some hundred paths exercise.',
+      evidence: { exercisedPathCount, outerPathCount: lower.pathCount },
     }),
   };
 }

@@ -21,7 +21,7 @@ export interface BoundEstimate extends Estimate {
  */
 export interface Plan {
   readonly fitPathCount: number;
-  /** Paths that carry both bounds; a multiple of nothing, the last block may be short. */
+  /** Paths that carry both bounds; any count from 2 up, the last block may be short. */
   readonly outerPathCount: number;
   /** Points of one step drawn for every outer path and date. */
   readonly innerPointCount: number;

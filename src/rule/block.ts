@@ -6,7 +6,7 @@ import { blockLanes } from '../program/program.js';
 import type { StreamKey } from '../program/stream.js';
 import { dateUniforms } from './date-graph.js';
 import { NotFinite } from './not-finite.js';
-import type { Programs } from './programs.js';
+import { type Programs, programList, workspaceColumnCount } from './programs.js';
 import type { Rule } from './rule.js';
 
 /**
@@ -21,6 +21,7 @@ export class Block {
   lanes = blockLanes;
   readonly #step: LoadedProgram;
   readonly #evaluate: LoadedProgram;
+  readonly #amounts: LoadedProgram;
   readonly #variables: LoadedProgram;
   readonly #polynomials: LoadedProgram;
   readonly #keys = new Map<Purpose, StreamKey[]>();
@@ -29,14 +30,14 @@ export class Block {
     readonly programs: Programs,
     readonly seed: string,
   ) {
-    const all = [programs.step, programs.evaluate, programs.variables, programs.polynomials];
-    const columnCount = Math.max(programs.layout.scratch, ...all.map((program) => program.columnCount));
+    const all = programList(programs);
     const scalarCount = all.reduce((total, program) => total + program.scalars.length, 0);
-    this.interpreter = createPlainInterpreter(columnCount, scalarCount);
+    this.interpreter = createPlainInterpreter(workspaceColumnCount(programs), scalarCount);
     this.columns = this.interpreter.columns;
-    const [step, evaluate, variables, polynomials] = all.map((program) => this.interpreter.load(program));
+    const [step, evaluate, amounts, variables, polynomials] = all.map((program) => this.interpreter.load(program));
     this.#step = step!;
     this.#evaluate = evaluate!;
+    this.#amounts = amounts!;
     this.#variables = variables!;
     this.#polynomials = polynomials!;
   }
@@ -75,17 +76,26 @@ export class Block {
     const { times, layout, drivers } = this.programs;
     this.#step.uniforms[stepUniforms.duration] = times[date + 1]! - times[date]!;
     this.interpreter.run(this.#step, this.lanes);
-    const bad = this.interpreter.findNotFinite(layout.next, drivers.length, this.lanes);
-    if (bad !== null) {
-      const { name, line } = drivers[bad.column - layout.next]!;
-      throw new NotFinite({
-        what: `the driver ${name}`,
-        line,
-        path: firstPath + bad.lane,
-        date: date + 1,
-        time: times[date + 1]!,
-      });
+    const bad = this.interpreter.findNotFinite(layout.next, drivers.length, this.lanes) ?? this.#findVanished();
+    if (bad === null) return;
+    const { name, line, isPositive } = drivers[bad.column - layout.next]!;
+    const value = this.columns[bad.column * blockLanes + bad.lane]!;
+    const what =
+      isPositive && value === 0
+        ? `the driver ${name} fell below the smallest number there is; its logarithm`
+        : `the driver ${name}`;
+    throw new NotFinite({ what, line, path: firstPath + bad.lane, date: date + 1, time: times[date + 1]! });
+  }
+
+  /** A driver that its law keeps positive, rounded to 0. */
+  #findVanished(): { column: number; lane: number } | null {
+    const { layout, drivers } = this.programs;
+    for (let driver = 0; driver < drivers.length; driver++) {
+      if (!drivers[driver]!.isPositive) continue;
+      const lane = this.column(layout.next + driver).indexOf(0);
+      if (lane >= 0) return { column: layout.next + driver, lane };
     }
+    return null;
   }
 
   /** Writes the variables of the automatic basis at `next`. */
@@ -93,10 +103,13 @@ export class Block {
     this.interpreter.run(this.#variables, this.lanes);
   }
 
-  /** Writes discounted payoff, terminal amount and basis columns for the drivers in `next` at a date. */
+  /**
+   * Writes discounted payoff, terminal amount and, before the last date, the basis columns for the drivers in `next`.
+   */
   evaluate(date: number, rule: Rule, firstPath: number): void {
     const { times, discountFactors: factors, variableCount, layout } = this.programs;
-    const { uniforms } = this.#evaluate;
+    const program = date === times.length - 1 ? this.#amounts : this.#evaluate;
+    const { uniforms } = program;
     uniforms[dateUniforms.clock] = times[date]!;
     uniforms[dateUniforms.discountFactor] = factors[date]!;
     uniforms[dateUniforms.untilNext] = (times[date + 1] ?? times[date]!) - times[date]!;
@@ -105,17 +118,17 @@ export class Block {
       rule.standards.subarray(date * variableCount * 2, (date + 1) * variableCount * 2),
       dateUniforms.firstStandard,
     );
-    this.interpreter.run(this.#evaluate, this.lanes);
+    this.interpreter.run(program, this.lanes);
     this.#checkFinite(layout.payoff, 2, date, firstPath);
   }
 
-  /** Says which basis column is not finite, if one is; the fit asks after every evaluation. */
+  /** Says which basis column is not finite, if one is. */
   checkBasis(date: number, firstPath: number): void {
     this.#checkFinite(this.programs.layout.basis, this.programs.columns.length, date, firstPath);
   }
 
   /** Writes the continuation value at `next`, from the basis there, into a column. */
-  continuation(date: number, rule: Rule, target: number): void {
+  continuation(date: number, rule: Rule, target: number, firstPath: number): void {
     const { layout, columns, floor } = this.programs;
     this.interpreter.combine(
       layout.basis,
@@ -125,6 +138,7 @@ export class Block {
       target,
       this.lanes,
     );
+    if (this.interpreter.findNotFinite(target, 1, this.lanes) !== null) this.checkBasis(date, firstPath);
     if (floor === null) return;
     const values = this.column(target);
     for (let lane = 0; lane < values.length; lane++) if (values[lane]! < floor) values[lane] = floor;
@@ -134,14 +148,14 @@ export class Block {
    * Writes the fitted value at `next`: the larger of payoff and continuation value, which goes to `hold`; on the last
    * date the terminal amount.
    */
-  value(date: number, rule: Rule, hold: number, target: number): void {
+  value(date: number, rule: Rule, hold: number, target: number, firstPath: number): void {
     const { layout, times } = this.programs;
     const values = this.column(target);
     if (date === times.length - 1) {
       values.set(this.column(layout.terminal));
       return;
     }
-    this.continuation(date, rule, hold);
+    this.continuation(date, rule, hold, firstPath);
     const payoff = this.column(layout.payoff);
     const continuation = this.column(hold);
     for (let lane = 0; lane < values.length; lane++) values[lane] = Math.max(payoff[lane]!, continuation[lane]!);

@@ -1,7 +1,8 @@
-import { type Amounts, writeAmounts } from '../clauses/amounts.js';
+import { type Amounts, writeAmounts, writeScaled } from '../clauses/amounts.js';
 import type { Driver } from '../paths/drivers.js';
 import { meaningsOfState } from '../paths/meanings.js';
 import { Graph, type Node } from '../program/graph.js';
+import { lower } from '../program/lower.js';
 import { automaticBasis } from '../regression/automatic-basis.js';
 import type { Basis, Column } from '../regression/basis.js';
 import { largestDriverCount, writeExpectedPayoff } from '../regression/expected-payoff.js';
@@ -39,11 +40,10 @@ export function writeDateGraph(
   const states = drivers.map((_, index) => graph.column(layout.next + index));
   const clock = graph.uniform(dateUniforms.clock);
   const factor = graph.uniform(dateUniforms.discountFactor);
-  const amountsAt = (nodes: readonly Node[], time: Node) =>
-    writeAmounts(graph, model.contract, meaningsOfState(model, graph, drivers, nodes, time), factor);
-  const amounts = amountsAt(states, clock);
+  const meanings = meaningsOfState(model, graph, drivers, states, clock);
+  const amounts = writeAmounts(graph, model.contract, meanings, factor);
   if (model.method.basis !== 'auto') {
-    const basis = statedBasis(model.method.basis, graph, meaningsOfState(model, graph, drivers, states, clock));
+    const basis = statedBasis(model.method.basis, graph, meanings);
     return { graph, amounts, basis, variables: [], uniformCount: dateUniforms.firstStandard };
   }
   const variables = writeVariables(graph, drivers, groups, states);
@@ -56,8 +56,12 @@ export function writeDateGraph(
   if (drivers.length <= largestDriverCount) {
     const expectedAfter = (uniform: number) => {
       const duration = graph.uniform(uniform);
-      const payoffAt = (nodes: readonly Node[]) => amountsAt(nodes, graph.add(clock, duration)).payoff;
-      return writeExpectedPayoff(model, graph, drivers, states, duration, payoffAt);
+      const payoffAt = (nodes: readonly Node[]) => {
+        const later = meaningsOfState(model, graph, drivers, nodes, graph.add(clock, duration));
+        return lower(model.contract.payoff.tree, graph, later);
+      };
+      const expected = writeExpectedPayoff(model, graph, drivers, states, duration, payoffAt);
+      return writeScaled(graph, model.contract, expected, factor);
     };
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
     payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });

@@ -86,7 +86,7 @@ export function sweepValues(block: Block, store: FitStore, rule: Rule, date: num
   forEachBlock(block, range, store.pathCount, (index, firstPath) => {
     loadPaths(block, store, index, date + 1);
     block.evaluate(date + 1, rule, firstPath);
-    block.value(date + 1, rule, hold, value);
+    block.value(date + 1, rule, hold, value, firstPath);
     const values = block.column(value);
     store.values.set(values, firstPath);
     loadPaths(block, store, index, date);

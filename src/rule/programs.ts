@@ -25,11 +25,13 @@ export interface Programs {
   readonly step: Program;
   /** Amounts and basis columns at `next`; uniforms as `dateUniforms` says. */
   readonly evaluate: Program;
+  /** The amounts alone, with the same uniforms: all that the last date needs. */
+  readonly amounts: Program;
   /** Variables at `next`, before they are standardised. */
   readonly variables: Program;
   /** Martingale polynomials of the innovations, given `state`. */
   readonly polynomials: Program;
-  readonly drivers: readonly (Named & { readonly start: number })[];
+  readonly drivers: readonly (Named & { readonly start: number; readonly isPositive: boolean })[];
   readonly columns: readonly Named[];
   /** The integrands use this many columns, from the first on. */
   readonly integrandColumnCount: number;
@@ -73,6 +75,7 @@ export function buildPrograms(model: CheckedModel): Programs {
       uniformCount,
       layout.scratch,
     ),
+    amounts: compile(graph, amountOutputs, uniformCount, layout.scratch),
     variables: compile(graph, outputsFrom(layout.variables, variables), uniformCount, layout.scratch),
     polynomials: compile(
       innovations.graph,
@@ -80,7 +83,12 @@ export function buildPrograms(model: CheckedModel): Programs {
       0,
       layout.scratch,
     ),
-    drivers: drivers.map(({ name, start, family }) => ({ name, start, line: family.line })),
+    drivers: drivers.map(({ name, start, family, law }) => ({
+      name,
+      start,
+      isPositive: law.isPositive,
+      line: family.line,
+    })),
     columns: basis.columns.map(({ name, line = null }) => ({ name, line })),
     integrandColumnCount: basis.integrandColumnCount,
     polynomialNames: innovations.polynomials.map(({ name }) => name),
@@ -92,6 +100,16 @@ export function buildPrograms(model: CheckedModel): Programs {
     sign: decisionSign(contract),
     payoffLine: contract.payoff.line,
   };
+}
+
+/** All programs, in the order in which a block loads them. */
+export function programList({ step, evaluate, amounts, variables, polynomials }: Programs): Program[] {
+  return [step, evaluate, amounts, variables, polynomials];
+}
+
+/** Columns of the workspace that all programs together need. */
+export function workspaceColumnCount(programs: Programs): number {
+  return Math.max(programs.layout.scratch, ...programList(programs).map((program) => program.columnCount));
 }
 
 /** The polynomials of one step's innovations, given the drivers before it. */

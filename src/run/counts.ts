@@ -1,29 +1,40 @@
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
+import { blockLanes } from '../program/program.js';
 import type { Forecast, Plan } from '../result/record.js';
 import type { Programs } from '../rule/programs.js';
-import type { Method } from '../scenario/model.js';
+import type { Method, UpperMethod } from '../scenario/model.js';
 import { defaultFitPathCount } from './fit-size.js';
 import type { ForecastCounts } from './forecast.js';
 
 const defaultNestedOuterPathCount = 1024;
-/** Inner paths of the nested bound are chosen so that its steps stay near this count, within limits. */
+const fewestNestedInnerPaths = 4;
+const mostNestedInnerPaths = 128;
+/** Steps of all inner paths of the nested bound when nobody set a budget, unless its limits say otherwise. */
 const nestedStepAim = 12_000_000;
 
 /** Counts that the method fixes or leaves to a fixed default; those of the pilot stay null. */
-export function countsBeforePilot(programs: Programs, method: Method): ForecastCounts {
-  const dateCount = programs.times.length - 1;
-  const isNested = method.upper === 'andersen-broadie';
-  const nestedOuterPathCount = isNested ? (method.nestedOuterPathCount ?? defaultNestedOuterPathCount) : 0;
-  const perInnerPath = nestedOuterPathCount * ((dateCount * (dateCount + 1)) / 2);
-  const affordable = Math.floor(nestedStepAim / Math.max(1, perInnerPath));
+export function countsBeforePilot(programs: Programs, method: Method, nestedSteps = nestedStepAim): ForecastCounts {
   return {
     fitPathCount: method.fitPathCount ?? defaultFitPathCount(programs),
     outerPathCount: method.outerPathCount,
     innerPointCount: method.innerPointCount,
-    nestedOuterPathCount,
-    nestedInnerPathCount: isNested ? (method.nestedInnerPathCount ?? Math.max(16, Math.min(128, affordable))) : 0,
+    ...(method.upper === 'andersen-broadie'
+      ? nestedCounts(programs, method, nestedSteps)
+      : { nestedOuterPathCount: 0, nestedInnerPathCount: 0 }),
   };
+}
+
+/** As many inner paths as the steps allow; outer paths are given up only when the fewest inner paths cost too much. */
+function nestedCounts(programs: Programs, method: Method, steps: number) {
+  const dateCount = programs.times.length - 1;
+  const stepsOfInnerPath = (dateCount * (dateCount + 1)) / 2;
+  const affordablePaths = Math.floor(steps / (stepsOfInnerPath * fewestNestedInnerPaths));
+  const fewestOuterPaths = Math.max(blockLanes, Math.min(defaultNestedOuterPathCount, affordablePaths));
+  const nestedOuterPathCount = method.nestedOuterPathCount ?? fewestOuterPaths;
+  const affordable = Math.floor(steps / (stepsOfInnerPath * nestedOuterPathCount));
+  const inner = Math.max(fewestNestedInnerPaths, Math.min(mostNestedInnerPaths, affordable));
+  return { nestedOuterPathCount, nestedInnerPathCount: method.nestedInnerPathCount ?? inner };
 }
 
 /** Mistakes that show only once the counts meet the machine and the basis. */
@@ -55,8 +66,20 @@ export function judgeCounts(programs: Programs, counts: ForecastCounts, forecast
   return messages;
 }
 
+const upperMethods: readonly UpperMethod[] = ['one-step', 'andersen-broadie', 'regressed'];
+
 /** Mistakes of a plan that was handed in to be replayed: counts that no run can have had. */
 export function judgePlan(plan: Plan): Message[] {
+  if (!upperMethods.includes(plan.upper)) {
+    return [
+      mistake('plan-does-not-fit', {
+        what: `The plan's upper bound is ${JSON.stringify(plan.upper)}; it must be ${upperMethods.join(', ')}.`,
+        why: 'A plan replays an earlier run of this program; no run can have had this one.',
+        mend: 'Take the `plan` of a record as it is, or leave the plan out.',
+        evidence: { upper: plan.upper },
+      }),
+    ];
+  }
   const isNested = plan.upper === 'andersen-broadie';
   const least: Record<string, number> = {
     fitPathCount: 1,

@@ -1,7 +1,7 @@
 import { blockLanes } from '../program/program.js';
 import type { Forecast, Plan } from '../result/record.js';
 import { sweepsPerDate } from '../rule/backward-induction.js';
-import type { Programs } from '../rule/programs.js';
+import { type Programs, workspaceColumnCount } from '../rule/programs.js';
 import { fitStoreBytes } from './fit-size.js';
 
 /** Resident before any work: the engine, this program's code, and each thread's own engine. Measured, see DEVELOPERS.md. */
@@ -17,9 +17,7 @@ export function forecastOf(
 ): Forecast {
   const dateCount = programs.times.length - 1;
   const columnCount = programs.columns.length;
-  const all = [programs.step, programs.evaluate, programs.variables, programs.polynomials];
-  const workspaceBytes =
-    Math.max(programs.layout.scratch, ...all.map((program) => program.columnCount)) * blockLanes * 8;
+  const workspaceBytes = workspaceColumnCount(programs) * blockLanes * 8;
   const ruleBytes = (dateCount + 1) * columnCount * (1 + programs.polynomialNames.length) * 8;
   return {
     peakMemoryBytes:

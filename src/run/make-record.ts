@@ -50,6 +50,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   const chosen = martingales.find(({ method }) => method === plan.upper) ?? martingales[0]!;
   const [lower, upper] = sign === 1 ? [ruled, chosen] : [chosen, ruled];
   const bracket95 = bracketOf(lower, upper);
+  if (!Number.isFinite(bracket95.high - bracket95.low)) throw new Error('a bound is not a finite number');
   const dates = dateFindings(findings);
   const gap = gapOf(findings, chosen.method);
   const basisIsAutomatic = model.method.basis === 'auto';
@@ -66,6 +67,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
     bracketWidth: bracket95.high - bracket95.low,
     wantedWidth,
     decidedBy: model.contract.decidedBy,
+    exercisedPathCount: outer.lower.count - outer.neverCount,
   });
   const text = typeof source === 'string' ? source : JSON.stringify(source);
   return {
@@ -121,10 +123,17 @@ function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
   });
 }
 
+/** Representatives that stand for all exercised paths in a quantile; enough for a ten-thousandth. */
+const mostRepresentatives = 10_000;
+
 /** Quantiles of the exercise time among the paths that exercise at all; null if none does. */
 function exerciseTimeQuantiles(outer: OuterSums, { times }: Programs): RunRecord['exerciseTimeQuantiles'] {
-  const exercised = outer.exerciseCounts.flatMap((count, date) => new Array<number>(count).fill(times[date]!));
-  if (exercised.length === 0) return null;
+  const total = outer.exerciseCounts.reduce((sum, count) => sum + count, 0);
+  if (total === 0) return null;
+  const scale = Math.min(1, mostRepresentatives / total);
+  const exercised = outer.exerciseCounts.flatMap((count, date) =>
+    new Array<number>(Math.ceil(count * scale)).fill(times[date]!),
+  );
   return {
     p05: quantileSorted(exercised, 0.05),
     p50: quantileSorted(exercised, 0.5),

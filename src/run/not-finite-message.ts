@@ -15,7 +15,7 @@ export function notFiniteMessage(
     sourceLine,
     what: `On path ${path}, at date ${date} (time ${time}), ${what} is not a finite number.`,
     why: 'One such path makes every mean meaningless, so the run was stopped; nothing was left out silently.',
-    mend: 'Look for a logarithm or root of something that can be negative, a division that can meet 0, or growth without bound.',
+    mend: 'Look for a logarithm or root of something that can be negative, a division that can meet 0, growth without bound, or a volatility far too large.',
     evidence: { path, date, time, what },
   });
 }

@@ -1,6 +1,6 @@
 import { blockLanes } from '../program/program.js';
 import type { BlockRange } from '../rule/fit-sweeps.js';
-import { NotFinite } from '../rule/not-finite.js';
+import { NotFinite, type NotFinitePlace } from '../rule/not-finite.js';
 import type { Executor } from '../workers/executor.js';
 import type { Job, ResultOf } from '../workers/jobs.js';
 
@@ -36,6 +36,7 @@ export async function runParcels<J extends Job>(
   signal: AbortSignal | undefined,
   onDone: (doneCount: number) => void,
 ): Promise<ParcelResults<J>> {
+  const failures: { position: number; place: NotFinitePlace }[] = [];
   const results = new Array<ResultOf<J> | undefined>(jobs.length).fill(undefined);
   let next = 0;
   let doneCount = 0;
@@ -44,14 +45,18 @@ export async function runParcels<J extends Job>(
       const position = next++;
       const reply = await executor.run(jobs[position]!);
       if (!reply.ok) {
+        failures.push({ position, place: reply.notFinite });
         next = jobs.length;
-        throw new NotFinite(reply.notFinite);
+        return;
       }
       results[position] = reply.result as ResultOf<J>;
       onDone(++doneCount);
     }
   };
   await settleAll(Array.from({ length: executor.workerCount * 2 }, work));
+  // All jobs before a failed one were begun before it, so the first failure is the same whoever came back first.
+  failures.sort((a, b) => a.position - b.position);
+  if (failures.length > 0) throw new NotFinite(failures[0]!.place);
   const finished = results.indexOf(undefined);
   const unbroken = finished < 0 ? results : results.slice(0, finished);
   return { results: unbroken as ResultOf<J>[], isComplete: finished < 0 };

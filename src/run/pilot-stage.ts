@@ -46,7 +46,7 @@ export async function choosePlan(
   const { method } = model;
   const counts = {
     outerPathCount: pilotOuterPathCount,
-    innerPointCount: method.innerPointCount ?? pilotInnerPointCount,
+    innerPointCount: Math.min(method.innerPointCount ?? pilotInnerPointCount, pilotInnerPointCount),
   };
   const before = environment.now();
   const { sums, isComplete } = await runOuter(executor, programs, 'pilot', counts, options.signal, options.onProgress);
@@ -55,27 +55,28 @@ export async function choosePlan(
 
   const dateCount = programs.times.length - 1;
   const pilotSteps = counts.outerPathCount * dateCount * (counts.innerPointCount + 1);
-  const pilotModel = modelOfPilot(sums, counts.innerPointCount);
+  const pilotModel = modelOfPilot(sums, counts.innerPointCount, method.upper);
   const wantedWidth = wantedWidthOf(method, pilotModel.value);
   const { budgetSeconds } = options;
   const secondsLeft = budgetSeconds === undefined ? null : Math.max(0, budgetSeconds - (after - started) / 1000);
-  const stepLimit =
-    secondsLeft === null ? defaultStepLimit : (secondsLeft * pilotSteps * 1000) / Math.max(1, after - before);
+  const affordable = secondsLeft === null ? null : (secondsLeft * pilotSteps * 1000) / Math.max(1, after - before);
+  const isNested = method.upper === 'andersen-broadie';
+  const share = affordable === null ? null : isNested ? affordable / 2 : affordable;
   const chosen = chooseCounts(pilotModel, {
     wantedWidth,
-    stepLimit,
+    stepLimit: share ?? defaultStepLimit,
     dateCount,
     outerPathCount: method.outerPathCount,
     innerPointCount: method.innerPointCount,
     spendAll: budgetSeconds !== undefined,
   });
   return {
-    plan: { ...countsBeforePilot(programs, method), ...chosen, upper: method.upper },
+    plan: { ...countsBeforePilot(programs, method, share ?? undefined), ...chosen, upper: method.upper },
     pilot: {
       ...counts,
       lowerStandardDeviation: pilotModel.lowerStandardDeviation,
       upperStandardDeviation: pilotModel.upperStandardDeviation,
-      gap: sums.gap.mean,
+      gap: method.upper === 'regressed' ? sums.regressedGap.mean : sums.gap.mean,
       expectedWidth: expectedWidth(pilotModel, chosen),
       wantedWidth: budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
     },

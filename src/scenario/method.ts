@@ -7,6 +7,8 @@ import { entryOf, itemsOf, type TreeNode, under } from './tree.js';
 
 const upperMethods: readonly UpperMethod[] = ['one-step', 'andersen-broadie', 'regressed'];
 const mostPaths = 100_000_000;
+/** One path has no standard error. */
+const fewestOuterPaths = 2;
 const mostInnerPoints = 65_536;
 
 /**
@@ -20,14 +22,14 @@ export function readMethod(reading: Reading): Method | null {
   const basis = readBasis(node, reading);
   const counts = under(node, 'counts');
   const bracketWidth = readBracketWidth(node, reading);
-  const count = (group: TreeNode | undefined, key: string, name: string, most: number) =>
-    readCount(group, key, name, most, reading);
+  const count = (group: TreeNode | undefined, key: string, name: string, most: number, least = 1) =>
+    readCount(group, key, name, { least, most }, reading);
   const fitPathCount = count(counts, 'fit', 'method.counts.fit', mostPaths);
-  const outerPathCount = count(counts, 'outer', 'method.counts.outer', mostPaths);
+  const outerPathCount = count(counts, 'outer', 'method.counts.outer', mostPaths, fewestOuterPaths);
   const innerPointCount = count(counts, 'inner', 'method.counts.inner', mostInnerPoints);
   const upper = readUpper(node, reading);
   const nested = under(node, 'upper');
-  const nestedOuterPathCount = count(nested, 'outer', 'method.upper.outer', mostPaths);
+  const nestedOuterPathCount = count(nested, 'outer', 'method.upper.outer', mostPaths, fewestOuterPaths);
   const nestedInnerPathCount = count(nested, 'inner', 'method.upper.inner', mostInnerPoints);
   if (reading.findings.count > before || bracketWidth === null || upper === null || basis === null) return null;
   return {
@@ -69,24 +71,29 @@ function readCount(
   group: TreeNode | undefined,
   key: string,
   setting: string,
-  most: number,
+  { least, most }: { readonly least: number; readonly most: number },
   reading: Reading,
 ): number | null {
   const node = under(group, key);
   const found = readNumber(node, `\`${key}\``, reading);
   if (node === undefined || found === null) return null;
   const { value } = found;
-  if (Number.isInteger(value) && value >= 1 && value <= most) {
+  if (Number.isInteger(value) && value >= least && value <= most) {
     reading.settings.fromText(setting, String(value), node);
     return value;
   }
   reading.findings.add({
     code: 'value-out-of-range',
     at: node.span,
-    what: `\`${key}\` is ${value}; it must be a whole number from 1 to ${most}.`,
-    why: value === 0 ? 'Without any paths there is no estimate.' : 'Paths and points are counted.',
-    mend: `Write a whole number from 1 to ${most}, or take the key away and leave the count to the pilot.`,
-    evidence: { key, value, most },
+    what: `\`${key}\` is ${value}; it must be a whole number from ${least} to ${most}.`,
+    why:
+      value === 0
+        ? 'Without any paths there is no estimate.'
+        : least > 1
+          ? 'Paths are counted, and the error of one path alone is unknown.'
+          : 'Paths and points are counted.',
+    mend: `Write a whole number from ${least} to ${most}, or take the key away and leave the count to the pilot.`,
+    evidence: { key, value, least, most },
   });
   return null;
 }

@@ -50,3 +50,12 @@ test('counts that the scenario fixes are kept', () => {
   expect(chooseCounts(model, { ...request, innerPointCount: 5 }).innerPointCount).toBe(5);
   expect(chooseCounts(model, { ...request, outerPathCount: 777 }).outerPathCount).toBe(777);
 });
+
+test('the effort grows without a cliff as the gap nears the wanted width', () => {
+  const spread = { ...model, gapPerInnerShare: 0 };
+  const effort = [];
+  for (let limitGap = 0.02; limitGap < 0.2; limitGap += 0.002)
+    effort.push(steps(chooseCounts({ ...spread, limitGap }, request)));
+  expect(Math.max(...effort)).toBeLessThan(80 * Math.min(...effort));
+  for (let i = 1; i < effort.length; i++) expect(effort[i]! / effort[i - 1]!).toBeGreaterThan(0.5);
+});

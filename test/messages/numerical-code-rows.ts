@@ -41,6 +41,7 @@ function crossed(): readonly Message[] {
     bracketWidth: 0,
     wantedWidth: null,
     decidedBy: 'holder',
+    exercisedPathCount: 500,
   }).advice;
 }
 

@@ -151,3 +151,75 @@ test('a scenario object and its text are the same scenario', async () => {
   const fromText = await recordOf(lots({ method: small }));
   expect(fromObject.bracket95).toEqual(fromText.bracket95);
 });
+
+async function refusalOf(text: string) {
+  const outcome = await value(text, { workers: 0 });
+  return outcome.kind === 'refused' ? outcome.messages : [];
+}
+
+test('a basis column that stops being a number on a valuation path stops the run, with the place', async () => {
+  const text = lots({
+    count: 1,
+    start: 40,
+    payoff: 'max(0, 40 - lot[1])',
+    method: ['counts: { fit: 600, outer: 4000, inner: 8 }', 'basis: ["log(lot[1] - 11)", "lot[1]"]'],
+  });
+  const [message] = await refusalOf(text);
+  expect(message!.code).toBe('not-finite');
+  expect(message!.what).toContain('log(lot[1] - 11)');
+  expect(message!.sourceLine).toContain('basis:');
+});
+
+test('a driver that falls below the smallest number is named with its line', async () => {
+  const [message] = await refusalOf(lots({ volatility: '60', method: small }));
+  expect(message!.code).toBe('not-finite');
+  expect(message!.what).toMatch(/driver lot\[\d\]/);
+  expect(message!.place).not.toBeNull();
+});
+
+test('a right that hardly any path exercises is delivered with its doubt', async () => {
+  const { advice, passedChecks } = await recordOf(
+    lots({ count: 1, payoff: 'max(0, 44 - lot[1])', dates: '[0.25, 0.5, 0.75, 1]', method: small }),
+  );
+  expect(advice.map(({ code }) => code)).toContain('effort-too-small');
+  expect(passedChecks.join(' ')).not.toContain('exercises on');
+});
+
+test('one inner point is allowed, and the pilot can still be read', async () => {
+  const { plan, lower, upper } = await recordOf(lots({ method: ['counts: { fit: 4000, inner: 1 }'] }));
+  expect(plan.innerPointCount).toBe(1);
+  expect(upper.value).toBeGreaterThan(lower.value);
+});
+
+test('the plan of a regressed upper bound knows its gap', async () => {
+  const { pilot, bracket95, gap, upper, lower } = await recordOf(
+    lots({ method: ['counts: { fit: 8000 }', 'bracket width: { relative: 6% }', 'upper: regressed'] }),
+  );
+  expect(upper.method).toBe('regressed');
+  expect(gap.value).toBeCloseTo(upper.value - lower.value, 9);
+  const width = bracket95.high - bracket95.low;
+  expect(Math.abs(width - pilot!.expectedWidth)).toBeLessThan(0.35 * width);
+});
+
+test('seeds that differ beyond Latin letters give different paths', async () => {
+  const a = await recordOf(lots({ seed: 'Łódź', method: small }));
+  const b = await recordOf(lots({ seed: 'Aódź', method: small }));
+  expect(a.lower.value).not.toBe(b.lower.value);
+});
+
+test.each([[{ outerPathCount: 1 }], [{ upper: 'best' }], [{ upper: 'andersen-broadie', nestedOuterPathCount: 0 }]])(
+  'a plan with %j is refused',
+  async (change) => {
+    const plan = {
+      fitPathCount: 3000,
+      outerPathCount: 512,
+      innerPointCount: 8,
+      nestedOuterPathCount: 0,
+      nestedInnerPathCount: 0,
+      upper: 'one-step',
+      ...change,
+    } as never;
+    const outcome = await value(lots(), { workers: 0, plan });
+    expect(outcome.kind === 'refused' && outcome.messages[0]!.code).toBe('plan-does-not-fit');
+  },
+);
