@@ -75,7 +75,12 @@ export function parseBudget(text: string): Parsed<number> {
     return wrong(`--budget ${text} has no unit.`, 'It could mean seconds or minutes.', mend, { text });
   }
   const seconds = Number(digits) * SECONDS_PER[unit]!;
-  if (!(seconds > 0 && seconds <= MOST_SECONDS)) {
+  if (seconds === 0) {
+    return wrong(`--budget ${text} is no time at all.`, 'A run takes some time, however small it is.', mend, {
+      seconds,
+    });
+  }
+  if (!(seconds <= MOST_SECONDS)) {
     return wrong(`--budget ${text} is out of range.`, 'A run can be planned for up to seven days.', mend, { seconds });
   }
   return { value: seconds };

@@ -1,7 +1,7 @@
 import { check } from '../index.js';
 import type { Message } from '../messages/message.js';
 import { checkReport } from '../report/check-text.js';
-import { exitCodes } from './exit-codes.js';
+import { exitCodeOfRefusal, exitCodes } from './exit-codes.js';
 import { type RawOverrides, readOverrides } from './overrides.js';
 import { readScenario } from './scenario-source.js';
 import { deliver, deliverDocument, refuse, showMessages } from './speak.js';
@@ -25,7 +25,7 @@ export async function checkCommand(file: string, flags: CheckFlags): Promise<num
   const outcome = source.kind === 'read' ? await check(source.text, overrides) : source;
   if (outcome.kind === 'refused') {
     refuse(outcome.messages, json);
-    return exitCodes.refused;
+    return exitCodeOfRefusal(outcome.messages);
   }
   const { scenario, forecast, advice } = outcome;
   const { title, money } = scenario.model;

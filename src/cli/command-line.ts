@@ -12,7 +12,8 @@ const EXIT_CODES = `
 Exit codes:
   0  done
   1  mistake in the scenario or in data
-  2  mistake on the command line
+  2  mistake on the command line, or in what --with, --seed, --width, --upper
+     or --budget ask of the scenario
   3  stopped early; what was finished is delivered
   4  a defect of this program
   5  finished, but advice was raised and --strict was given`;

@@ -1,6 +1,6 @@
 import type { Message } from '../messages/message.js';
 import { renderMessages } from '../messages/render.js';
-import { styleFor } from './terminal.js';
+import { messageWidth, styleFor } from './terminal.js';
 
 /** Prints the answer on standard output. */
 export function deliver(text: string): void {
@@ -19,7 +19,7 @@ export function remark(text: string): void {
 
 /** Shows messages to the person at the terminal. */
 export function showMessages(messages: readonly Message[]): void {
-  if (messages.length > 0) remark(renderMessages(messages, styleFor(process.stderr)));
+  if (messages.length > 0) remark(renderMessages(messages, styleFor(process.stderr), messageWidth(process.stderr)));
 }
 
 /** Refuses: the messages for people on standard error and, if a program is listening, as a document on standard output. */

@@ -40,7 +40,12 @@ export function styleFor(stream: NodeJS.WriteStream): Style {
 
 /** The width of the page: the terminal's own within readable limits, or a fixed one for files and pipes. */
 export function pageWidth(stream: NodeJS.WriteStream): number {
-  return Math.min(120, Math.max(60, stream.isTTY ? stream.columns : 100));
+  return Math.min(120, Math.max(20, stream.isTTY ? stream.columns : 100));
+}
+
+/** The width of messages: a terminal's own; a file or pipe gets whole sentences, which a search finds. */
+export function messageWidth(stream: NodeJS.WriteStream): number {
+  return stream.isTTY ? pageWidth(stream) : Number.POSITIVE_INFINITY;
 }
 
 /**

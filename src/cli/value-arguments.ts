@@ -1,8 +1,10 @@
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
+import { printable } from '../messages/printable.js';
 import type { ValueOptions } from '../run/options.js';
 import { readPlan } from '../store/read-record.js';
 import { prepareRunDirectory } from '../store/record-file.js';
+import { textHash } from '../store/text-hash.js';
 import { parseBudget, parseWorkers } from './arguments.js';
 import { exitCodes } from './exit-codes.js';
 import { type RawOverrides, readOverrides, taken } from './overrides.js';
@@ -20,7 +22,13 @@ export interface ValueFlags extends RawOverrides {
 
 /** Everything a valuation needs from outside, or the exit code and messages that end it before it starts. */
 export type Prepared =
-  | { readonly kind: 'ready'; readonly text: string; readonly options: ValueOptions }
+  | {
+      readonly kind: 'ready';
+      readonly text: string;
+      readonly options: ValueOptions;
+      /** What is worth knowing before the run starts, and no mistake. */
+      readonly remarks: readonly string[];
+    }
   | { readonly kind: 'refused'; readonly exitCode: number; readonly messages: readonly Message[] };
 
 /** Options that contradict each other. A width beside a plan is no contradiction: the bracket is judged by it. */
@@ -35,6 +43,12 @@ function contradictions(flags: ValueFlags): Message[] {
     }
   }
   return found;
+}
+
+/** A plan of another text is replayed all the same: its counts are what is wanted. */
+function remarksOn(plan: string | undefined, scenarioHash: string | null, text: string): string[] {
+  if (plan === undefined || scenarioHash === null || scenarioHash === textHash(text)) return [];
+  return [`The plan in ${printable(plan)} comes from another scenario text; its counts are used all the same.`];
 }
 
 /** Reads the options, then the files they name, and tries the run directory. */
@@ -55,6 +69,7 @@ export async function prepareValue(file: string, flags: ValueFlags): Promise<Pre
   return {
     kind: 'ready',
     text: source.text,
+    remarks: remarksOn(flags.plan, replay?.scenarioHash ?? null, source.text),
     options: {
       ...overrides,
       ...(budgetSeconds === undefined ? {} : { budgetSeconds }),

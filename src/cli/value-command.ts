@@ -3,7 +3,7 @@ import { textReport } from '../report/text.js';
 import type { RunRecord } from '../result/record.js';
 import type { ValueOutcome } from '../run/options.js';
 import { recordText, writeRecord } from '../store/record-file.js';
-import { exitCodes } from './exit-codes.js';
+import { exitCodeOfRefusal, exitCodes } from './exit-codes.js';
 import { listenForInterruption } from './interruption.js';
 import { progressOn } from './progress.js';
 import { deliver, deliverDocument, refuse, remark, showMessages } from './speak.js';
@@ -59,10 +59,11 @@ export async function valueCommand(file: string, flags: ValueFlags): Promise<num
     refuse(prepared.messages, json);
     return prepared.exitCode;
   }
+  for (const words of prepared.remarks) remark(words);
   const outcome = await run(prepared);
   if (outcome.kind === 'refused') {
     refuse(outcome.messages, json);
-    return exitCodes.refused;
+    return exitCodeOfRefusal(outcome.messages);
   }
   if (outcome.kind === 'stopped') {
     remark('Stopped before there was a bracket; there is nothing to deliver.');

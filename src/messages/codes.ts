@@ -54,6 +54,7 @@ const catalogue = {
   // Values
   'not-finite-value': { severity: 'mistake', title: 'A value that is not a finite number' },
   'value-out-of-range': { severity: 'mistake', title: 'A value outside the range that has a meaning' },
+  'too-many-constants': { severity: 'mistake', title: 'More constants than the program takes' },
   'constant-cycle': { severity: 'mistake', title: 'Constants that are stated through one another' },
   'bad-date': { severity: 'mistake', title: 'A day that is not in the calendar' },
 

@@ -29,7 +29,7 @@ export function excerpt(line: string, column: number, length: number): Excerpt {
 }
 
 /** How many columns of a terminal a text takes. */
-function columnsOf(text: string): number {
+export function columnsOf(text: string): number {
   let columns = 0;
   for (const character of text) columns += widthOf(character);
   return columns;

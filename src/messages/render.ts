@@ -1,6 +1,7 @@
 import { excerpt } from './excerpt.js';
 import type { Message } from './message.js';
 import { printable } from './printable.js';
+import { wrapWords } from './wrap-words.js';
 
 /** Dresses a piece of text for its role: `place`, `mistake`, `advice`, `code`, `source`, `caret`, `label`, `mend`. */
 export type MessageStyle = (role: string, text: string) => string;
@@ -10,6 +11,7 @@ const bare: MessageStyle = (_role, text) => text;
 /**
  * Messages as text for people, in the order given, a blank line between two.
  *
+ * @param width to which sentences are wrapped; source lines are cut by their own rule
  * @example
  * // lots.yaml:12:18  mistake  unknown-name
  * //   `strik` is not a name of this scenario.
@@ -19,28 +21,32 @@ const bare: MessageStyle = (_role, text) => text;
  * //   Why:  …
  * //   Mend: …
  */
-export function renderMessages(messages: readonly Message[], style: MessageStyle = bare): string {
-  return messages.map((message) => renderMessage(message, style)).join('\n');
+export function renderMessages(
+  messages: readonly Message[],
+  style: MessageStyle = bare,
+  width = Number.POSITIVE_INFINITY,
+): string {
+  return messages.map((message) => renderMessage(message, style, width)).join('\n');
 }
 
-function renderMessage(message: Message, style: MessageStyle): string {
+function renderMessage(message: Message, style: MessageStyle, width: number): string {
   const { code, severity, place, what, why, mend } = message;
   const position = place === null ? [] : [style('place', `${printable(place.file)}:${place.line}:${place.column}`)];
   const lines = [
     [...position, style(severity, severity), style('code', code)].join('  '),
-    `  ${block(what, 2)}`,
+    `  ${block(what, 2, width)}`,
     ...source(message, style),
-    `  ${style('label', 'Why: ')} ${block(why, 8)}`,
-    `  ${style('label', 'Mend:')} ${style('mend', block(mend, 8))}`,
+    `  ${style('label', 'Why: ')} ${block(why, 8, width)}`,
+    `  ${style('label', 'Mend:')} ${style('mend', block(mend, 8, width))}`,
   ];
   return `${lines.join('\n')}\n`;
 }
 
 /** Texts of ours may have several lines (a piece of a scenario to copy); texts from outside never keep theirs. */
-function block(text: string, indent: number): string {
+function block(text: string, indent: number, width: number): string {
   return text
     .split('\n')
-    .map(printable)
+    .map((line) => wrapWords(printable(line), Math.max(20, width - indent)).replaceAll('\n', `\n${' '.repeat(indent)}`))
     .join(`\n${' '.repeat(indent)}`);
 }
 

@@ -150,6 +150,7 @@ class Check {
 
   /** What a name stands for, or null after a problem. */
   private lookUp(name: string, span: Span): ScopeSymbol | null {
+    if (this.scope.unclear?.has(name)) return null;
     const symbol = this.scope.symbols.get(name);
     if (symbol === undefined) return this.add(problems.unknownName(name, span, this.scope));
     if (!this.scope.allowed.has(symbol.kind)) return this.add(problems.notUsableHere(name, symbol, span, this.scope));

@@ -1,8 +1,9 @@
 import type { MistakeCode } from '../messages/codes.js';
+import { figure } from '../messages/figures.js';
 import { nearest } from '../messages/nearest.js';
 import { listed, quoted } from '../messages/printable.js';
 import type { Expression, Span } from './expression.js';
-import { functionShapes, functionUses } from './functions.js';
+import { foreignFunctions, functionShapes, functionUses } from './functions.js';
 import type { ExpressionProblem } from './scan-expression.js';
 import type { Scope, ScopeSymbol } from './scope.js';
 
@@ -25,6 +26,8 @@ const kindWords: Readonly<Record<ScopeSymbol['kind'], string>> = {
   number: 'the position of a member in its family',
 };
 
+const answers: ReadonlySet<string> = new Set(['yes', 'no', 'true', 'false']);
+
 /** The near names at the end of a remedy, if there are any. */
 function nearWords(near: readonly string[]): string {
   return near.length === 0 ? '' : ` Near ${near.length === 1 ? 'name' : 'names'}: ${listed(near, 'and')}.`;
@@ -36,6 +39,14 @@ export function unknownName(name: string, span: Span, scope: Scope): ExpressionP
   if (functionShapes.has(name)) {
     const mend = `It is a function: write ${functionUses.get(name)}.`;
     return problem('unknown-name', span, { what: `${quoted(name)} has no arguments here.`, why, mend }, { name });
+  }
+  if (answers.has(name)) {
+    const words = {
+      what: `${quoted(name)} stands in a formula; a number is meant here.`,
+      why: 'Yes and no answer keys such as `today`; they have no amount.',
+      mend: 'Write a number; a condition is a comparison, as x > 0.',
+    };
+    return problem('unknown-name', span, words, { name });
   }
   const usable = [...scope.symbols].filter(([, { kind }]) => scope.allowed.has(kind)).map(([known]) => known);
   const near = nearest(name, usable);
@@ -55,13 +66,11 @@ export function unknownFunction(call: Expression & { kind: 'call' }, scope: Scop
   const known = `The functions are ${[...functionShapes.keys()].join(' ')}.`;
   const what = `${quoted(name)} is not a function of the language.`;
   const why = 'An expression can call only the functions of a closed list.';
-  if (symbol === undefined)
-    return problem(
-      'unknown-function',
-      call.nameSpan,
-      { what, why, mend: `${known}${nearWords(near)}` },
-      { name, near },
-    );
+  const foreign = foreignFunctions.get(name.toLowerCase());
+  if (symbol === undefined) {
+    const mend = foreign === undefined ? `${known}${nearWords(near)}` : foreign;
+    return problem('unknown-function', call.nameSpan, { what, why, mend }, { name, near });
+  }
   const mend =
     symbol.kind === 'family'
       ? `It is a family: write a member with square brackets, as ${name}[1].`
@@ -136,7 +145,7 @@ export function indexNotConstant(position: Expression, family: string): Expressi
 /** A position that the family does not have. */
 export function indexOutOfRange(position: Expression, family: string, count: number, value: number): ExpressionProblem {
   const words = {
-    what: `The family ${quoted(family)} has no position ${value}.`,
+    what: `The family ${quoted(family)} has no position ${figure(value)}.`,
     why: `It has ${count} ${count === 1 ? 'member' : 'members'}, and positions are whole numbers from 1 to ${count}.`,
     mend: `Write a whole number from 1 to ${count}.`,
   };

@@ -41,6 +41,42 @@ export const functionUses: ReadonlyMap<string, string> = new Map([
   ['product', 'product(family)'],
 ]);
 
+/** What other languages call a function, and how it is written here. */
+export const foreignFunctions: ReadonlyMap<string, string> = new Map([
+  ['ln', 'The natural logarithm is log(x).'],
+  ['log10', '`log` is the natural logarithm; to base 10 write log(x) / log(10).'],
+  ['log2', '`log` is the natural logarithm; to base 2 write log(x) / log(2).'],
+  ['log1p', 'Write log(1 + x).'],
+  ['expm1', 'Write exp(x) - 1.'],
+  ['pow', 'Write a power as a ^ b.'],
+  ['power', 'Write a power as a ^ b.'],
+  ['sqr', 'Write a square as x ^ 2.'],
+  ['square', 'Write a square as x ^ 2.'],
+  ['cbrt', 'Write a cube root as x ^ (1 / 3).'],
+  ['avg', 'The mean of a family is mean(family); of single numbers, (a + b) / 2.'],
+  ['average', 'The mean of a family is mean(family); of single numbers, (a + b) / 2.'],
+  ['total', 'The total of a family is sum(family); of single numbers, a + b.'],
+  ['prod', 'The product of a family is product(family); of single numbers, a * b.'],
+  ['maximum', 'Of single numbers write max(a, b); of a family largest(family).'],
+  ['minimum', 'Of single numbers write min(a, b); of a family smallest(family).'],
+  ['median', 'The median of a family of three is largest(family, 2).'],
+  ['round', 'Write floor(x + 0.5).'],
+  ['ceil', 'Write -floor(-x).'],
+  ['ceiling', 'Write -floor(-x).'],
+  ['int', 'Write floor(x).'],
+  ['trunc', 'Write floor(x).'],
+  ['mod', 'The rest of a / b is a - b * floor(a / b).'],
+  ['sign', 'Write if(x > 0, 1, if(x < 0, -1, 0)).'],
+  ['where', 'A choice is if(condition, value, other value).'],
+  ['choose', 'A choice is if(condition, value, other value).'],
+  ['ifelse', 'A choice is if(condition, value, other value).'],
+  ['iif', 'A choice is if(condition, value, other value).'],
+  ['cdf', 'The normal distribution function is normalcdf(x).'],
+  ['normcdf', 'The normal distribution function is normalcdf(x).'],
+  ['phi', 'The normal distribution function is normalcdf(x).'],
+  ['erf', 'Write 2 * normalcdf(x * sqrt(2)) - 1.'],
+]);
+
 /** Words of the expression language that nobody may give to a constant or a driver. */
 export const reservedWords: ReadonlySet<string> = new Set([
   ...functionShapes.keys(),

@@ -29,6 +29,8 @@ export interface Scope {
   readonly observedOnly: boolean;
   /** The value of a constant; null while it is not known, because it was itself a mistake. */
   readonly valueOf: (name: string) => number | null;
+  /** Names with two meanings, already told as a mistake: whatever uses them raises no second one. */
+  readonly unclear?: ReadonlySet<string>;
   /** How many values `number` runs through. */
   readonly memberCount: number;
 }

@@ -1,7 +1,7 @@
 import { printable } from '../messages/printable.js';
 import type { BoundEstimate, BoundMethod, Estimate, RunRecord } from '../result/record.js';
-import { decimalsFor, fixed, fixedOutward, grouped, relativePercent } from './numbers.js';
-import { paragraph } from './prose.js';
+import { decimalsFor, exactFigure, fixed, fixedOutward, grouped, isWithoutNoise, relativePercent } from './numbers.js';
+import { paragraph, wrapWords } from './prose.js';
 import type { Style } from './style.js';
 import { layOut } from './table.js';
 
@@ -18,24 +18,70 @@ export function methodWords(method: BoundMethod): string {
   return METHOD_WORDS[method];
 }
 
-/** The one line that answers the question: between what and what the value lies. */
-export function bracketSentence(record: RunRecord, style: Style): string {
+/** Whether both bounds are known but for rounding, as when every path pays the same. */
+function isExact({ lower, upper, bracket95: { low, high } }: RunRecord): boolean {
+  const isKnown = lower.standardError !== null && upper.standardError !== null;
+  return isKnown && isWithoutNoise(high - low, Math.max(Math.abs(low), Math.abs(high)));
+}
+
+interface Sentence {
+  readonly role: string;
+  /** The whole sentence, and the piece of it that is dressed. */
+  readonly text: string;
+  readonly dressed: string;
+}
+
+/** The one sentence that answers the question: between what and what the value lies. */
+function bracketSentence(record: RunRecord): Sentence {
   const { low, high } = record.bracket95;
   const money = printable(record.scenario.money);
+  if (isExact(record)) {
+    const dressed = `${exactFigure((low + high) / 2)} ${money}`;
+    const text = `Value to the holder: ${dressed}. Both bounds give it on every path: it has no sampling error.`;
+    return { role: 'strong', text, dressed };
+  }
   // Decimals follow the wider of the two intervals; where the bounds are exact, the bracket's own width.
   const widest = Math.max(record.lower.halfWidth95 ?? 0, record.upper.halfWidth95 ?? 0);
   const decimals = decimalsFor(widest > 0 ? widest : (high - low) / 2);
   const from = fixedOutward(low, decimals, 'low');
   const to = fixedOutward(high, decimals, 'high');
   if (low > high) {
-    return style(
-      'doubt',
-      `No bracket: its low end, ${from} ${money}, is above its high end, ${to}. The bounds cross; see the advice.`,
-    );
+    const text = `No bracket: its low end, ${from} ${money}, is above its high end, ${to}. The bounds cross; see the advice.`;
+    return { role: 'doubt', text, dressed: text };
   }
   const middle = Math.abs((low + high) / 2);
   const width = middle > 0 ? `, ${relativePercent((high - low) / middle)} wide` : '';
-  return `Value to the holder: between ${style('strong', `${from} and ${to} ${money}`)} (95% bracket${width}).`;
+  const dressed = `${from} and ${to} ${money}`;
+  return { role: 'strong', text: `Value to the holder: between ${dressed} (95% bracket${width}).`, dressed };
+}
+
+/** Estimates that cross by no more than their error, which a reader of the table would stumble over. */
+function crossesWithinError(record: RunRecord): boolean {
+  const { lower, upper, bracket95, advice } = record;
+  const isDoubted = advice.some(({ code }) => code === 'crossed-bounds');
+  return upper.value < lower.value && bracket95.low <= bracket95.high && !isDoubted && !isExact(record);
+}
+
+/** The answer, and what a reader must know to trust it. */
+export function bracketText(record: RunRecord, width: number, style: Style): string {
+  const { role, text, dressed } = bracketSentence(record);
+  const lines = [dress(wrapWords(text, width), dressed, (piece) => style(role, piece))];
+  if (crossesWithinError(record)) {
+    const words =
+      'The upper estimate lies below the lower one: the estimates cross within their error, and the bracket is valid.';
+    lines.push(wrapWords(words, width));
+  }
+  return lines.join('\n');
+}
+
+/** Dresses a piece of a wrapped text, line by line where it runs over a line end. */
+function dress(wrapped: string, piece: string, style: (text: string) => string): string {
+  const start = wrapped.replaceAll('\n', ' ').indexOf(piece);
+  // A word that had to be broken inside: nothing is dressed, so that nothing is torn.
+  if (start < 0) return wrapped;
+  const end = start + piece.length;
+  const middle = wrapped.slice(start, end).split('\n').map(style).join('\n');
+  return `${wrapped.slice(0, start)}${middle}${wrapped.slice(end)}`;
 }
 
 /** What each bound promises, for the party that decides. */
@@ -45,14 +91,18 @@ function promise(record: RunRecord): string {
     : 'The issuer decides and wants to pay as little as it can. The upper bound is what the holder receives under the fitted rule; under no rule of the issuer can the holder receive less than the lower bound. The gap is the most that a better rule could save the issuer.';
 }
 
-function estimateRow(name: string, estimate: Estimate, paths: string, made: string): string[] {
-  const decimals = decimalsFor(estimate.halfWidth95);
-  const halfWidth = estimate.halfWidth95 === null ? 'unknown' : fixed(estimate.halfWidth95, decimals);
-  return [name, fixed(estimate.value, decimals), halfWidth, paths, made];
+/** @param scale the size of the bounds, beside which a rounding error is no noise */
+function estimateRow(name: string, estimate: Estimate, scale: number, paths: string, made: string): string[] {
+  const { value, halfWidth95 } = estimate;
+  if (halfWidth95 !== null && isWithoutNoise(halfWidth95, scale)) {
+    return [name, isWithoutNoise(value, scale) ? '0' : exactFigure(value), '0', paths, made];
+  }
+  const decimals = decimalsFor(halfWidth95);
+  return [name, fixed(value, decimals), halfWidth95 === null ? 'unknown' : fixed(halfWidth95, decimals), paths, made];
 }
 
-function boundRow(name: string, bound: BoundEstimate): string[] {
-  return estimateRow(name, bound, grouped(bound.pathCount), methodWords(bound.method));
+function boundRow(name: string, bound: BoundEstimate, scale: number): string[] {
+  return estimateRow(name, bound, scale, grouped(bound.pathCount), methodWords(bound.method));
 }
 
 /** Bounds that were computed beside the bracket's own. */
@@ -63,15 +113,17 @@ function besideBracket(record: RunRecord): BoundEstimate[] {
 
 /** The bounds and their gap as a table, with the meaning of its columns. */
 export function boundsText(record: RunRecord, width: number, style: Style): string {
-  const otherName = record.decidedBy === 'holder' ? 'another upper bound' : 'another lower bound';
+  const otherName =
+    record.decidedBy === 'holder' ? 'upper bound (beside the bracket)' : 'lower bound (beside the bracket)';
+  const scale = Math.max(Math.abs(record.lower.value), Math.abs(record.upper.value));
   const table = layOut(
     {
       heads: ['', 'value', '±', 'paths', 'made by'],
       rows: [
-        boundRow('lower bound', record.lower),
-        boundRow('upper bound', record.upper),
-        ...besideBracket(record).map((bound) => boundRow(otherName, bound)),
-        estimateRow('gap', record.gap, '', 'upper bound less lower bound'),
+        boundRow('lower bound', record.lower, scale),
+        boundRow('upper bound', record.upper, scale),
+        ...besideBracket(record).map((bound) => boundRow(otherName, bound, scale)),
+        estimateRow('gap', record.gap, scale, '', 'upper bound less lower bound'),
       ],
       rightColumns: [1, 2, 3],
     },

@@ -77,10 +77,10 @@ export function checkReport(findings: CheckFindings, layout: TextLayout = {}): s
   const changed = settings.filter((setting) => setting.origin.kind === 'command line').length;
   const count = `No mistakes. ${counted(settings.length, 'setting')}: ${settings.length - defaults - changed} from the file, ${changed} from the command line, ${defaults} by default.`;
   const parts = [
-    `${style('title', printable(findings.title))}\n${count}`,
+    `${style('title', wrapWords(printable(findings.title), width))}\n${wrapWords(count, width)}`,
     settingsText(settings, width, style),
     section('What a run will need', forecastText(findings.forecast, width, style), style),
-    adviceText(findings.advice, style),
+    adviceText(findings.advice, width, style),
   ];
   return `${parts.join('\n\n')}\n`;
 }

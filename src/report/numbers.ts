@@ -1,3 +1,5 @@
+export { memory } from '../messages/figures.js';
+
 /**
  * Decimals that show an estimate to two significant digits of its half-width, because further digits are noise.
  *
@@ -67,14 +69,12 @@ export function duration(seconds: number): string {
   return `${Math.floor(minutes / 60)} h ${minutes % 60} min`;
 }
 
-/** An amount of memory, in units of 1024. */
-export function memory(bytes: number): string {
-  const units = ['bytes', 'KB', 'MB', 'GB', 'TB', 'PB'];
-  let amount = bytes;
-  let unit = 0;
-  while (amount >= 1000 && unit < units.length - 1) {
-    amount /= 1024;
-    unit += 1;
-  }
-  return `${unit === 0 ? amount : Number(amount.toPrecision(3))} ${units[unit]}`;
+/** A number that carries no noise: at most ten significant digits. */
+export function exactFigure(value: number): string {
+  return String(Number(value.toPrecision(10)));
+}
+
+/** Whether a width is nothing but rounding beside the value that it belongs to: below 1e-9 of it. */
+export function isWithoutNoise(width: number, value: number): boolean {
+  return Math.abs(width) <= 1e-9 * Math.abs(value);
 }

@@ -1,7 +1,7 @@
 import { printable } from '../messages/printable.js';
 import type { RunRecord } from '../result/record.js';
 import { methodWords } from './bracket-text.js';
-import { counted, decimalsFor, duration, fixed, grouped, percent } from './numbers.js';
+import { counted, decimalsFor, duration, fixed, grouped, isWithoutNoise, percent } from './numbers.js';
 import { paragraph } from './prose.js';
 
 /** The counts the run was made with, and what the pilot expected of them. */
@@ -19,7 +19,9 @@ export function planText(record: RunRecord, width: number): string {
   const bracketBound = record.decidedBy === 'holder' ? 'upper' : 'lower';
   sentences.push(`The bracket's ${bracketBound} end comes from: ${methodWords(plan.upper)}.`);
   if (pilot === null) {
-    sentences.push('Every count was given; there was no pilot.');
+    sentences.push('There was no pilot: the outer and inner counts were given.');
+  } else if (isWithoutNoise(pilot.expectedWidth, record.lower.value)) {
+    sentences.push(`The pilot (${counted(pilot.outerPathCount, 'path')}) found no sampling error.`);
   } else {
     const decimals = decimalsFor(Math.min(pilot.expectedWidth, pilot.wantedWidth ?? pilot.expectedWidth));
     const money = printable(record.scenario.money);

@@ -1,10 +1,10 @@
 import { printable } from '../messages/printable.js';
 import { renderMessages } from '../messages/render.js';
 import type { RunRecord } from '../result/record.js';
-import { boundsText, bracketSentence } from './bracket-text.js';
+import { boundsText, bracketText } from './bracket-text.js';
 import { exerciseText } from './exercise-text.js';
 import { basisText, planText, timingText } from './plan-text.js';
-import { paragraph } from './prose.js';
+import { paragraph, wrapWords } from './prose.js';
 import { changedText, reproduceText } from './reproduce-text.js';
 import { plainStyle, type Style } from './style.js';
 
@@ -30,9 +30,9 @@ export function section(heading: string, body: string, style: Style): string {
 }
 
 /** Advice as the message renderer words it, under a heading that counts it. */
-export function adviceText(advice: RunRecord['advice'], style: Style): string {
+export function adviceText(advice: RunRecord['advice'], width: number, style: Style): string {
   if (advice.length === 0) return section('Advice', '  None.', style);
-  return section(`Advice (${advice.length})`, renderMessages(advice, style).trimEnd(), style);
+  return section(`Advice (${advice.length})`, renderMessages(advice, style, width).trimEnd(), style);
 }
 
 /**
@@ -44,16 +44,19 @@ export function textReport(record: RunRecord, layout: RunTextLayout = {}): strin
   const style = layout.style ?? plainStyle;
   const width = layout.width ?? 100;
   const changed = changedText(record, width);
-  const head = [style('title', printable(record.scenario.title)), bracketSentence(record, style)];
+  const head = [style('title', wrapWords(printable(record.scenario.title), width)), bracketText(record, width, style)];
   if (record.status === 'stopped') {
     head.push(
       style(
         'doubt',
-        'Stopped early: only the paths counted below were finished, so the bracket is wider than planned.',
+        wrapWords(
+          'Stopped early: only the paths counted below were finished, so the bracket is wider than planned.',
+          width,
+        ),
       ),
     );
   }
-  if (changed !== null) head.push(changed.trimStart());
+  if (changed !== null) head.push(changed.replace(/^ {2}/gm, ''));
   const checks = record.passedChecks.map((check) => paragraph(`${style('good', '✓')} ${printable(check)}`, width));
   const parts = [
     head.join('\n'),
@@ -61,8 +64,8 @@ export function textReport(record: RunRecord, layout: RunTextLayout = {}): strin
     section('Exercise', exerciseText(record, width, style), style),
     section('Plan', planText(record, width), style),
     section('Basis', basisText(record, width), style),
-    adviceText(record.advice, style),
-    ...(checks.length > 0 ? [section('Checks that found nothing', checks.join('\n'), style)] : []),
+    adviceText(record.advice, width, style),
+    ...(checks.length > 0 ? [section('Checks passed', checks.join('\n'), style)] : []),
     section('Time', timingText(record, width), style),
     section('To get the same digits again', reproduceText(record, layout.recordPath ?? null, width), style),
     style('quiet', paragraph(CAUTION, width).replace(/^ {2}/gm, '')),

@@ -1,4 +1,5 @@
 import { mistake } from '../messages/build.js';
+import { memory } from '../messages/figures.js';
 import type { Message } from '../messages/message.js';
 import { blockLanes } from '../program/program.js';
 import type { Forecast, Plan } from '../result/record.js';
@@ -53,12 +54,11 @@ export function judgeCounts(programs: Programs, counts: ForecastCounts, forecast
   }
   const { peakMemoryBytes, machineMemoryBytes } = forecast;
   if (machineMemoryBytes !== null && peakMemoryBytes > machineMemoryBytes) {
-    const gigabytes = (bytes: number) => `${(bytes / 1e9).toPrecision(3)} GB`;
     messages.push(
       mistake('memory-beyond-machine', {
-        what: `The run needs about ${gigabytes(peakMemoryBytes)} of memory; the machine has ${gigabytes(machineMemoryBytes)}.`,
+        what: `The run needs about ${memory(peakMemoryBytes)} of memory; the machine has ${memory(machineMemoryBytes)}.`,
         why: 'The paths of the fit are kept in memory; with less, the machine would stall or stop the run.',
-        mend: 'Lower `counts: { fit: … }` under method, or state fewer decision dates.',
+        mend: 'Lower `counts: { fit: … }` under method, or state fewer decision dates or drivers.',
         evidence: { peakMemoryBytes, machineMemoryBytes },
       }),
     );

@@ -9,18 +9,19 @@ const defaultWidth: Width = { relative: 0.01 };
 const amount = /^(\d+(?:\.\d*)?|\.\d+)(?:[eE]([-+]?\d+))?\s*(%?)$/;
 
 /**
- * Reads the width that the bracket should have: from outside if given there, else from the file, else half a percent.
+ * Reads the width that the bracket should have: from outside if given there, else from the file, else the default of one percent.
  *
  * @fails adds `bad-override`, `mixed-forms`, `missing-key`, `value-out-of-range` and `width-and-counts`
  */
 export function readBracketWidth(method: TreeNode | undefined, reading: Reading): Width | null {
   const { overrides, settings } = reading;
   const stated = readStated(method, reading);
+  if (overrides.budgetSeconds !== undefined) refuseBudget(method, reading);
   const given = overrides.width;
   if (given !== undefined) {
     const width = parseWidth(String(given));
     if (width === null) return badWidth(String(given), reading);
-    refuseCounts(method, 'the width that is asked for from outside', reading);
+    refuseCounts(method, '`--width`', reading, { override: '--width' });
     settings.fromCommandLine('method.bracket width', words(width));
     return width;
   }
@@ -88,7 +89,12 @@ function asShare(width: Width | null): Width | null {
 }
 
 /** A width is reached by choosing the counts of outer paths and inner points, so it cannot stand beside them. */
-function refuseCounts(method: TreeNode | undefined, wanted: string, reading: Reading): void {
+function refuseCounts(
+  method: TreeNode | undefined,
+  wanted: string,
+  reading: Reading,
+  evidence: Readonly<Record<string, string>> = {},
+): void {
   for (const key of ['outer', 'inner']) {
     const entry = entryOf(under(method, 'counts'), key);
     if (entry === undefined) continue;
@@ -98,9 +104,23 @@ function refuseCounts(method: TreeNode | undefined, wanted: string, reading: Rea
       what: `\`${key}\` is fixed here, which contradicts ${wanted}.`,
       why: 'A width is reached by choosing these counts; with both stated one of them would be passed over.',
       mend: `Take \`${key}\` away, or the width.`,
-      evidence: { key },
+      evidence: { key, ...evidence },
     });
   }
+}
+
+/** A budget is spent on the counts that are left free; with none left it would be passed over. */
+function refuseBudget(method: TreeNode | undefined, reading: Reading): void {
+  const entries = ['outer', 'inner'].map((key) => entryOf(under(method, 'counts'), key));
+  if (entries.includes(undefined)) return;
+  reading.findings.add({
+    code: 'bad-override',
+    at: entries[0]!.keySpan,
+    what: '`outer` and `inner` are fixed here, which contradicts `--budget`.',
+    why: 'A time is kept by choosing these counts; with both stated the budget would be passed over.',
+    mend: 'Take one of the counts away, or leave `--budget` out.',
+    evidence: { override: '--budget' },
+  });
 }
 
 function badWidth(text: string, reading: Reading): null {
@@ -110,7 +130,7 @@ function badWidth(text: string, reading: Reading): null {
     what: `The width asked for, ${quoted(text)}, is no width.`,
     why: 'A bracket is as wide as a positive number says.',
     mend: 'Give a share of the value such as 0.1%, or an amount of money such as 0.02.',
-    evidence: { text: text.slice(0, 100) },
+    evidence: { text: text.slice(0, 100), override: '--width' },
   });
   return null;
 }

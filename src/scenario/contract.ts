@@ -1,8 +1,13 @@
 import type { AtExpiry, Contract } from '../clauses/contract.js';
+import { nearest } from '../messages/nearest.js';
+import { listed, quoted } from '../messages/printable.js';
+import { functionShapes } from '../program/functions.js';
 import { readDecisionDates } from './decision-dates.js';
 import { echo, readExpression, readNumber } from './read-expression.js';
 import { type Reading, stateScope } from './reading.js';
-import { entryOf, type TreeNode, under } from './tree.js';
+import { entryOf, type ScalarNode, type TreeNode, under } from './tree.js';
+
+const atExpiryWords = ['lapse', 'forced'];
 
 /**
  * Reads the contract. Clauses that are not built yet are passed over here; they have their own message.
@@ -30,12 +35,37 @@ export function readContract(reading: Reading): Contract | null {
   return { decidedBy, decisionDates, payoff, atExpiry, discount: discount.expression };
 }
 
+/** A word alone that names nothing: not an amount, but a choice that was misspelt. */
+function isWord({ value, text }: ScalarNode, reading: Reading): boolean {
+  return typeof value === 'string' && /^[A-Za-z_]\w*(?: [A-Za-z_]\w*)*$/.test(text) && !/\b(?:and|or|not)\b/.test(text)
+    ? text.includes(' ') || !(reading.symbols.has(text) || functionShapes.has(text))
+    : false;
+}
+
+function notAtExpiry(node: ScalarNode, reading: Reading): null {
+  const near = nearest(node.text, [...atExpiryWords, ...reading.symbols.keys()]);
+  // Whoever says no to anything left at the end means that the right lapses.
+  const says = /^(?:no|none|nothing|never)$/i.test(node.text) ? ['lapse'] : near;
+  const names = [...says, ...atExpiryWords.filter((word) => node.text.toLowerCase().startsWith(word.slice(0, 4)))];
+  const unique = [...new Set(names)];
+  reading.findings.add({
+    code: 'wrong-choice',
+    at: node.span,
+    what: `\`at expiry\` is ${quoted(node.text)}, which is neither \`lapse\` nor \`forced\` nor an amount.`,
+    why: 'It decides what is paid if nothing was done by the last date.',
+    mend: `Write \`lapse\` (nothing is paid), \`forced\` (the payoff is), or an amount.${unique.length === 0 ? '' : ` Near ${unique.length === 1 ? 'name' : 'names'}: ${listed(unique, 'and')}.`}`,
+    evidence: { text: node.text.slice(0, 100), near: unique },
+  });
+  return null;
+}
+
 function readAtExpiry(contract: TreeNode, decidedBy: string, reading: Reading): AtExpiry | null {
   const node = under(contract, 'at expiry');
   const { settings, findings } = reading;
   if (node?.kind === 'scalar') {
     settings.fromText('contract.at expiry', node.text, node);
     if (node.value === 'lapse' || node.value === 'forced') return { kind: node.value };
+    if (isWord(node, reading)) return notAtExpiry(node, reading);
     const amount = readExpression(node, stateScope(reading, 'the amount at expiry'), reading);
     return amount === null ? null : { kind: 'pays', amount };
   }

@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import { quoted } from '../messages/printable.js';
 import { type CorrelationTable, statePair } from './correlation-table.js';
 import { readDriverName } from './driver-names.js';
@@ -108,7 +109,7 @@ function readCell(cell: TreeNode, i: number, j: number, reading: Reading): numbe
   reading.findings.add({
     code: 'matrix-diagonal',
     at: cell.span,
-    what: `The matrix has ${value} on its diagonal, in row ${i + 1}.`,
+    what: `The matrix has ${figure(value)} on its diagonal, in row ${i + 1}.`,
     why: 'Every driver moves with itself exactly; a correlation matrix has ones there.',
     mend: 'Write 1. If these are covariances, divide each by the two volatilities.',
     evidence: { row: i + 1, value },
@@ -122,7 +123,7 @@ function readCoefficient(node: TreeNode, name: string, reading: Reading): number
   reading.findings.add({
     code: 'value-out-of-range',
     at: node.span,
-    what: `${capital(name)} is ${value}; it must be from -1 to 1.`,
+    what: `${capital(name)} is ${figure(value)}; it must be from -1 to 1.`,
     why: 'No two quantities can move together more than exactly.',
     mend: 'Write a number from -1 to 1; 20% is 0.2.',
     evidence: { value },

@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import { quoted } from '../messages/printable.js';
 import { readCorrelationStatement } from './correlation-statements.js';
 import { type CorrelationTable, memberCountOf, type PairStatement } from './correlation-table.js';
@@ -45,7 +46,9 @@ function impossible({ form, pairs }: Indefinite, table: CorrelationTable, readin
   }));
   const worst = pairs[0]!;
   const statement = table.statements[table.statedBy[worst.first]![worst.second]! - 1]!;
-  const words = named.map(({ drivers, value }) => `${quoted(drivers[0]!)} and ${quoted(drivers[1]!)} at ${value}`);
+  const words = named.map(
+    ({ drivers, value }) => `${quoted(drivers[0]!)} and ${quoted(drivers[1]!)} at ${figure(value)}`,
+  );
   reading.findings.add({
     code: 'correlation-impossible',
     at: statement.span,

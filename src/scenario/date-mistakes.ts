@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import { quoted } from '../messages/printable.js';
 import type { Reading } from './reading.js';
 import type { TextSpan } from './source-text.js';
@@ -39,7 +40,7 @@ export function outOfRange(name: string, value: number, words: string, node: Tre
   reading.findings.add({
     code: 'value-out-of-range',
     at: node.span,
-    what: `${name} is ${value}; it must be ${words}.`,
+    what: `${name} is ${figure(value)}; it must be ${words}.`,
     why: 'Other values describe no list of dates.',
     mend: `Write ${words.startsWith('a ') ? words : `a number ${words}`}.`,
     evidence: { value },
@@ -58,7 +59,7 @@ export function beforeToday(name: string, value: number, at: TextSpan, reading: 
   reading.findings.add({
     code: 'date-before-today',
     at,
-    what: `${name} is ${value}, before today.`,
+    what: `${name} is ${figure(value)}, before today.`,
     why: 'Times count from today, which is 0; what lies before can no longer be decided.',
     mend: 'Leave out the dates that have passed, and state starts and constants as of today.',
     evidence: { value },
@@ -84,7 +85,7 @@ export function notDividing(first: number, last: number, every: number, node: Tr
   reading.findings.add({
     code: 'dates-do-not-divide',
     at: node.span,
-    what: `From ${first} in steps of ${every} the dates reach ${first + steps * every} and then pass ${last}.`,
+    what: `From ${figure(first)} in steps of ${figure(every)} the dates reach ${figure(first + steps * every)} and then pass ${figure(last)}.`,
     why: 'It is not clear whether the last date is one of the steps or one more.',
     mend: 'Change `last`, `first` or `every` so that they meet, or write the list of dates.',
     evidence: { first, last, every },
@@ -97,7 +98,7 @@ export function tooMany(count: number, at: TextSpan, reading: Reading): null {
   reading.findings.add({
     code: 'too-many-dates',
     at,
-    what: `There are ${count} decision dates; at most ${mostDates} are taken.`,
+    what: `There are ${figure(count)} decision dates; at most ${mostDates} are taken.`,
     why: 'Each date takes a regression of its own.',
     mend: 'Decide less often: with more dates than that the value hardly moves.',
     evidence: { count, mostDates },

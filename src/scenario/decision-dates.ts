@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import * as mistakes from './date-mistakes.js';
 import { mostDates } from './date-mistakes.js';
 import { readYesNo } from './names.js';
@@ -92,7 +93,7 @@ function spaced(
     return mistakes.outOfRange('The time between decision dates', every, 'greater than 0', at('every'), reading);
   if (last < first)
     return mistakes.notRising(
-      `The last decision date, ${last}, lies before the first, ${first}.`,
+      `The last decision date, ${figure(last)}, lies before the first, ${figure(first)}.`,
       at('last').span,
       reading,
     );
@@ -112,7 +113,7 @@ function rises(dates: readonly number[], node: TreeNode, entry: Entry, reading: 
     if (date < 0) mistakes.beforeToday(`Decision date ${index + 1}`, date, placeOf(index), reading);
     else if (before !== null && date <= before) {
       mistakes.notRising(
-        `Decision date ${index + 1}, ${date}, does not come after the one before it, ${before}.`,
+        `Decision date ${index + 1}, ${figure(date)}, does not come after the one before it, ${figure(before)}.`,
         placeOf(index),
         reading,
       );

@@ -67,7 +67,7 @@ function circleAmong(
 }
 
 /** Constants that are stated through one another. */
-export function constantCycle(cycle: readonly string[], at: TextSpan, findings: Findings): void {
+export function constantCycle(cycle: readonly string[], at: TextSpan, isOverridden: boolean, findings: Findings): void {
   const shown = cycle.length > 8 ? [...cycle.slice(0, 8), '…'] : cycle;
   findings.add({
     code: 'constant-cycle',
@@ -78,6 +78,6 @@ export function constantCycle(cycle: readonly string[], at: TextSpan, findings: 
         : `The constants ${listed(shown, 'and')} are stated through one another in a circle.`,
     why: 'None of them can be computed before the others.',
     mend: 'State one of them as a number.',
-    evidence: { cycle: shown },
+    evidence: { cycle: shown, ...(isOverridden ? { override: '--with' } : {}) },
   });
 }

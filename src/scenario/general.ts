@@ -56,6 +56,7 @@ function readSeed(reading: Reading): string {
       what: 'The seed asked for is no text.',
       why: 'Every draw is a function of the seed text; an empty one is most often a slip.',
       mend: 'Give any text that is not empty.',
+      evidence: { override: '--seed' },
     });
   }
   settings.fromCommandLine('seed', String(overrides.seed));

@@ -102,7 +102,7 @@ export const contract = z.strictObject(
     blackout: windows.optional(),
     notice: expression.optional(),
     payoff,
-    'at expiry': expression.optional(),
+    'at expiry': z.union([z.string(), z.number()], { error: 'lapse, forced, or an amount' }).optional(),
     discount,
     'while held': z.union([income, z.array(income)], { error: '{ receive, when }, or a list of them' }).optional(),
     'ends when': z

@@ -1,4 +1,5 @@
 import { type CST, Lexer, Parser } from 'yaml';
+import { refuseCharacters } from './characters.js';
 import type { Findings } from './findings.js';
 
 /** The largest text that is read, in UTF-16 units. */
@@ -15,7 +16,7 @@ export const mostDepth = 30;
  *
  * The splitting itself uses no recursion; everything that comes after it does, and may rely on the limits kept here.
  *
- * @fails adds `scenario-too-large` or `scenario-too-deep` and gives null
+ * @fails adds `scenario-too-large`, `scenario-too-deep` or, for characters, `not-yaml`, and gives null
  * @cost linear, at most about a second
  */
 export function splitWithinLimits(text: string, findings: Findings): CST.Token[] | null {
@@ -23,6 +24,7 @@ export function splitWithinLimits(text: string, findings: Findings): CST.Token[]
     tooLarge(`The text has ${text.length} characters; at most ${mostTextLength} are read.`, findings);
     return null;
   }
+  if (refuseCharacters(text, findings)) return null;
   const parser = new Parser();
   const tokens: CST.Token[] = [];
   let pieceCount = 0;

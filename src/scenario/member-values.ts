@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import { usedSymbols } from '../program/check-expression.js';
 import type { PlacedExpression } from '../program/expression.js';
 import { computed } from './read-expression.js';
@@ -58,7 +59,7 @@ export function judge(label: string, value: number, range: Range, node: TreeNode
     reading.findings.add({
       code: 'value-out-of-range',
       at: node.span,
-      what: `${label} is ${value}; it must be ${range.words}.`,
+      what: `${label} is ${figure(value)}; it must be ${range.words}.`,
       why: 'The law of this driver has no meaning for it.',
       mend: `Write a value that is ${range.words}.`,
       evidence: { value },

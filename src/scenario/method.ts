@@ -1,3 +1,4 @@
+import { figure } from '../messages/figures.js';
 import type { PlacedExpression } from '../program/expression.js';
 import { readBracketWidth } from './bracket-width.js';
 import type { Method, UpperMethod } from './model.js';
@@ -85,7 +86,7 @@ function readCount(
   reading.findings.add({
     code: 'value-out-of-range',
     at: node.span,
-    what: `\`${key}\` is ${value}; it must be a whole number from ${least} to ${most}.`,
+    what: `\`${key}\` is ${figure(value)}; it must be a whole number from ${least} to ${most}.`,
     why:
       value === 0
         ? 'Without any paths there is no estimate.'
@@ -138,7 +139,7 @@ function badUpper(upper: string, reading: Reading): null {
     what: `The upper bound asked for, \`${upper.slice(0, 60)}\`, does not exist.`,
     why: 'Another bound than the one meant would be reported.',
     mend: `Choose one of ${upperMethods.join(', ')}.`,
-    evidence: { upper: upper.slice(0, 60) },
+    evidence: { upper: upper.slice(0, 60), override: '--upper' },
     near: { word: upper, among: upperMethods },
   });
   return null;

@@ -16,8 +16,10 @@ export function declareNames(reading: Reading): void {
   const isFree = (entry: Entry, what: string) => {
     if (!isLawful(entry, what, reading)) return false;
     const line = lineOf.get(entry.key);
-    if (line !== undefined) usedTwice(entry, line, reading);
-    else lineOf.set(entry.key, reading.source.lineOf(entry.keySpan.start));
+    if (line !== undefined) {
+      usedTwice(entry, line, reading);
+      reading.unclear.add(entry.key);
+    } else lineOf.set(entry.key, reading.source.lineOf(entry.keySpan.start));
     return line === undefined;
   };
   for (const entry of entriesOf(under(reading.root, 'constants'))) {

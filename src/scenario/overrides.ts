@@ -10,4 +10,6 @@ export interface ScenarioOverrides {
   /** `"0.1%"` of the value or an amount of money such as `"0.02"`. */
   readonly width?: string;
   readonly upper?: UpperMethod;
+  /** Wall time to aim for; judged here only against counts that the text fixes. */
+  readonly budgetSeconds?: number;
 }

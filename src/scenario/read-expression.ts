@@ -1,3 +1,4 @@
+import { quoted } from '../messages/printable.js';
 import { checkExpression, type ExpressionType, usedSymbols } from '../program/check-expression.js';
 import { evaluateConstant } from '../program/evaluate.js';
 import type { Expression, PlacedExpression } from '../program/expression.js';
@@ -32,7 +33,8 @@ export function readExpression(
 export function parseAt(node: ScalarNode, reading: Reading): PlacedExpression | null {
   const start = node.textStart ?? node.span.start;
   const [line, column] = [reading.source.lineOf(start), reading.source.columnOf(start)];
-  // A number of YAML is taken as it is, so that every way to write one (+5, 0x10) is understood.
+  if (/^[-+]?0[xo]/i.test(node.text) && typeof node.value === 'number') return notDecimal(node, reading);
+  // A number of YAML is taken as it is, so that every decimal way to write one (+5, 5.) is understood.
   if (typeof node.value === 'number') {
     if (!Number.isFinite(node.value)) return noNumber('This value', node, reading);
     return { text: node.text, tree: numberTree(node.value, node.text.length), line, column };
@@ -102,9 +104,23 @@ function noNumber(name: string, node: ScalarNode, reading: Reading): null {
   return null;
 }
 
+function notDecimal(node: ScalarNode, reading: Reading): null {
+  reading.findings.add({
+    code: 'wrong-type',
+    at: node.span,
+    what: `${quoted(node.text)} is not a decimal number.`,
+    why: 'A number that one reader takes as sixteen and another as ten has no place in a contract.',
+    mend: `Write decimal: ${Number(node.value)}, if that is what is meant.`,
+    evidence: { text: node.text.slice(0, 100) },
+  });
+  return null;
+}
+
 /** The value of a checked expression of constants and `number`; null while a constant in it has no value. */
 export function computed(tree: Expression, reading: Reading, number = 1): number | null {
-  for (const name of usedSymbols(tree, reading).constants) if (!reading.constantValues.has(name)) return null;
+  for (const name of usedSymbols(tree, reading).constants) {
+    if (reading.unclear.has(name) || !reading.constantValues.has(name)) return null;
+  }
   return evaluateConstant(tree, (name) => (name === 'number' ? number : reading.constantValues.get(name)!));
 }
 

@@ -1,6 +1,6 @@
 import type { Message } from '../messages/message.js';
 import type { ScopeSymbol } from '../program/scope.js';
-import { readConstants } from './constants.js';
+import { limitConstants, readConstants } from './constants.js';
 import { readContract } from './contract.js';
 import { readCorrelation } from './correlation.js';
 import { readCounts } from './driver-counts.js';
@@ -42,10 +42,20 @@ export function readScenario(text: string, overrides: ScenarioOverrides = {}): R
   const root = readTree(source, findings);
   if (root === null) return refused();
   checkStructure(root, findings);
+  limitConstants(root, findings);
   if (findings.count > 0) return refused();
   const symbols = new Map<string, ScopeSymbol>();
   const settings = new Settings(source);
-  const reading: Reading = { source, root, overrides, findings, settings, symbols, constantValues: new Map() };
+  const reading: Reading = {
+    source,
+    root,
+    overrides,
+    findings,
+    settings,
+    symbols,
+    unclear: new Set(),
+    constantValues: new Map(),
+  };
   const model = readModel(reading);
   if (findings.count > 0 || model === null) return refused();
   return { scenario: { model, settings: settings.all() }, messages: [] };

@@ -15,7 +15,7 @@ import type { Findings } from './findings.js';
 import { splitWithinLimits } from './guard.js';
 import type { SourceText, TextSpan } from './source-text.js';
 import type { Entry, MapNode, ScalarNode, TreeNode } from './tree.js';
-import { yamlWords } from './yaml-errors.js';
+import { tellComplaints } from './yaml-complaints.js';
 
 /**
  * Reads a text as YAML 1.2 into groups, lists and values with their places.
@@ -31,10 +31,12 @@ export function readTree(source: SourceText, findings: Findings): MapNode | null
   for (const token of tokens) if (token.type === 'directive') directive(token, findings);
   const documents = compose(tokens, source.text.length);
   const [first, second] = documents;
-  for (const { code, pos } of documents.flatMap(({ errors }) => errors)) {
-    if (findings.isFull) break;
-    if (code !== 'TAG_RESOLVE_FAILED') notYaml(code, { start: pos[0], end: pos[1] }, findings);
-  }
+  tellComplaints(
+    documents.flatMap(({ errors }) => errors),
+    tokens,
+    source,
+    findings,
+  );
   if (second !== undefined) severalDocuments(second.range[0], findings);
   const walk = new Walk(source, findings);
   const root = first!.contents === null ? null : walk.read(first!.contents as ParsedNode, { start: 0, end: 0 });
@@ -145,12 +147,6 @@ class Walk {
       });
     }
   }
-}
-
-function notYaml(code: Parameters<typeof yamlWords>[0], at: TextSpan, findings: Findings): void {
-  const { what, mend } = yamlWords(code);
-  const why = 'A scenario is read as YAML; what breaks its rules has no certain meaning.';
-  findings.add({ code: 'not-yaml', at, what, why, mend, evidence: { reader: code } });
 }
 
 function directive(token: CST.Token, findings: Findings): void {

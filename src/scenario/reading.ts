@@ -14,6 +14,8 @@ export interface Reading {
   readonly settings: Settings;
   /** Constants, drivers and families in file order, and the words `t` and `number`. */
   readonly symbols: Map<string, ScopeSymbol>;
+  /** Names of two things: told as a mistake once, and nothing that uses them is judged further. */
+  readonly unclear: Set<string>;
   /** Constants whose value could be computed. */
   readonly constantValues: Map<string, number>;
 }
@@ -44,6 +46,7 @@ function scope(reading: Reading, subject: string, allowed: ReadonlySet<SymbolKin
     subject,
     allowedWords,
     observedOnly: false,
+    unclear: reading.unclear,
     valueOf: (name) => reading.constantValues.get(name) ?? null,
     memberCount: 1,
   };

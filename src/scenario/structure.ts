@@ -1,6 +1,7 @@
 import type { z } from 'zod';
 import { nearest } from '../messages/nearest.js';
 import { listed, quoted } from '../messages/printable.js';
+import { foreignWhiteSpace } from '../messages/white-space.js';
 import type { Findings } from './findings.js';
 import { scenarioGrammar } from './grammar.js';
 import { keysAt, placesOfKey } from './grammar-keys.js';
@@ -18,10 +19,28 @@ type Path = readonly PropertyKey[];
 export function checkStructure(root: MapNode, findings: Findings): void {
   const outcome = scenarioGrammar.safeParse(plainData(root));
   if (outcome.success) return;
-  for (const issue of outcome.error.issues) {
+  const { issues } = outcome.error;
+  const excused = misspeltKeys(root, issues);
+  for (const issue of issues) {
     if (findings.isFull) return;
+    if (excused.has(JSON.stringify(issue.path))) continue;
     report(root, [], issue, findings);
   }
+}
+
+/** Paths of keys that are missing because a near one, told as unknown, stands in their place. */
+function misspeltKeys(root: MapNode, issues: readonly Issue[]): Set<string> {
+  const unknown = new Map<string, string[]>();
+  for (const issue of issues) {
+    if (issue.code === 'unrecognized_keys') unknown.set(JSON.stringify(issue.path), issue.keys);
+  }
+  const excused = new Set<string>();
+  for (const { path, code } of issues) {
+    if (code === 'unrecognized_keys' || nodeAt(root, path) !== undefined) continue;
+    const here = unknown.get(JSON.stringify(path.slice(0, -1))) ?? [];
+    if (nearest(String(path.at(-1)), here).length > 0) excused.add(JSON.stringify(path));
+  }
+  return excused;
 }
 
 function report(root: MapNode, before: Path, issue: Issue, findings: Findings): void {
@@ -66,9 +85,15 @@ function unknownKey(root: MapNode, path: Path, key: string, findings: Findings):
     at: entry.keySpan,
     what: `${quoted(key)} is not a key of ${place(path)}.`,
     why: 'A key that is not known would be passed over in silence, and with it what it was meant to say.',
-    mend: keyMend(known, near, elsewhere),
+    mend: `${spaceMend(key)}${keyMend(known, near, elsewhere)}`,
     evidence: { key: key.slice(0, 100), known, near },
   });
+}
+
+/** A space that only looks like one makes a key another key. */
+function spaceMend(key: string): string {
+  const space = foreignWhiteSpace(key);
+  return space === null ? '' : `There is ${space.name} in it: write an ordinary space. `;
 }
 
 function keyMend(known: readonly string[], near: readonly string[], elsewhere: readonly string[][]): string {
@@ -115,9 +140,13 @@ function wrongValue(root: MapNode, path: Path, node: TreeNode, issue: Issue, fin
     at: node.kind === 'scalar' ? node.span : groupOrItemSpan(root, path, node),
     what: `${name} must be ${issue.message}, but ${isChoice && node.kind === 'scalar' ? quoted(node.text) : describe(node)} stands here.`,
     why: 'Nothing else has a meaning in this place, and nothing is guessed.',
-    mend: `Write ${issue.message}.`,
+    mend: `Write ${issue.message}${isAnswer(node) && /number|formula/.test(issue.message) ? '; yes and no have no amount' : ''}.`,
     ...(isChoice && node.kind === 'scalar' ? { near: { word: node.text, among: choices } } : {}),
   });
+}
+
+function isAnswer(node: TreeNode): boolean {
+  return node.kind === 'scalar' && typeof node.value === 'boolean';
 }
 
 /** The words that the grammar takes at this place, if it takes words. */

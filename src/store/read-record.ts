@@ -4,6 +4,7 @@ import type { Message } from '../messages/message.js';
 import type { Plan, RunRecord } from '../result/record.js';
 import { readTextFile } from './read-text.js';
 import { recordShape, replayShape } from './record-shape.js';
+import { IS_FOLDER } from './refusal-reason.js';
 
 interface Refused {
   readonly kind: 'refused';
@@ -11,10 +12,25 @@ interface Refused {
 }
 
 /** A plan that was read from a record, or why it could not be. */
-export type ReadPlan = { readonly kind: 'read'; readonly plan: Plan } | Refused;
+export type ReadPlan =
+  | {
+      readonly kind: 'read';
+      readonly plan: Plan;
+      /** Hash of the scenario text that the plan was made for, if the record says it. */
+      readonly scenarioHash: string | null;
+    }
+  | Refused;
 
 /** A record that was read back, or why it could not be. */
 export type ReadRecord = { readonly kind: 'read'; readonly record: RunRecord } | Refused;
+
+const TYPE_WORDS: Readonly<Record<string, string>> = {
+  int: 'a whole number',
+  number: 'a number',
+  string: 'a text',
+  object: 'an object',
+  array: 'a list',
+};
 
 const RECORD_BYTE_LIMIT = 256 * 1024 * 1024;
 
@@ -36,6 +52,22 @@ function isMissing(root: unknown, path: readonly PropertyKey[]): boolean {
   return false;
 }
 
+/** What a field must be, in words. */
+function wanted(issue: z.core.$ZodIssue): string {
+  switch (issue.code) {
+    case 'too_small':
+      return `${issue.minimum} or more`;
+    case 'too_big':
+      return `${issue.maximum} or less`;
+    case 'invalid_value':
+      return issue.values.map((value) => JSON.stringify(value)).join(' or ');
+    case 'invalid_type':
+      return TYPE_WORDS[issue.expected] ?? 'of another kind';
+    default:
+      return 'as this program writes it';
+  }
+}
+
 /** One message for each thing that is missing or wrong. */
 function findings(path: string, content: unknown, issues: readonly z.core.$ZodIssue[]): Message[] {
   return issues.map((issue) => {
@@ -43,9 +75,16 @@ function findings(path: string, content: unknown, issues: readonly z.core.$ZodIs
     const field = issue.path.join('.');
     const what = isMissing(content, issue.path)
       ? `is not a whole record: \`${field}\` is missing.`
-      : `is not a record: \`${field}\` is wrong (${issue.message}).`;
+      : `is not a record: \`${field}\` is wrong (it must be ${wanted(issue)}).`;
     return invalid(path, what, { field });
   });
+}
+
+/** A run directory is easily given where one record in it is meant. */
+function namingRecord(message: Message): Message {
+  return message.evidence.reason === IS_FOLDER
+    ? { ...message, mend: 'Name one record, as FOLDER/RUN.json: each run in a run directory has a file of its own.' }
+    : message;
 }
 
 /** Reads a JSON file and holds it against a shape. */
@@ -54,7 +93,7 @@ async function readShaped<T>(
   shape: z.ZodType<T>,
 ): Promise<{ readonly kind: 'read'; readonly content: T } | Refused> {
   const source = await readTextFile(path, RECORD_BYTE_LIMIT);
-  if (source.kind === 'refused') return source;
+  if (source.kind === 'refused') return { ...source, messages: source.messages.map(namingRecord) };
   let content: unknown;
   try {
     content = JSON.parse(source.text);
@@ -76,12 +115,12 @@ async function readShaped<T>(
 export async function readPlan(path: string): Promise<ReadPlan> {
   const read = await readShaped(path, replayShape);
   if (read.kind === 'refused') return read;
-  const { plan } = read.content;
+  const { plan, scenario } = read.content;
   if (plan.upper === 'andersen-broadie' && (plan.nestedOuterPathCount === 0 || plan.nestedInnerPathCount === 0)) {
     const what = 'asks for the Andersen-Broadie upper bound but gives it no paths.';
     return { kind: 'refused', messages: [invalid(path, what, { field: 'plan.upper' })] };
   }
-  return { kind: 'read', plan };
+  return { kind: 'read', plan, scenarioHash: scenario?.sha256 ?? null };
 }
 
 /**

@@ -1,6 +1,7 @@
 import { createReadStream } from 'node:fs';
 import type { Readable } from 'node:stream';
 import { mistake } from '../messages/build.js';
+import { memory } from '../messages/figures.js';
 import type { Message } from '../messages/message.js';
 import { refusalReason } from './refusal-reason.js';
 
@@ -30,7 +31,7 @@ export async function readStream(source: Readable, name: string, byteLimit: numb
         source.destroy();
         return refused(
           mistake('file-too-large', {
-            what: `${name} is larger than ${byteLimit / 1024 ** 2} MB.`,
+            what: `${name} is larger than ${memory(byteLimit)}.`,
             why: 'A text of this size is not what this place is for, and reading it could use up the memory.',
             mend: 'Check that it is the file you mean.',
             evidence: { byteLimit },

@@ -1,5 +1,5 @@
-import { type FileHandle, mkdir, open, rename, rm } from 'node:fs/promises';
-import { join } from 'node:path';
+import { type FileHandle, mkdir, open, rename, rm, stat } from 'node:fs/promises';
+import { dirname, join } from 'node:path';
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
 import type { RunRecord } from '../result/record.js';
@@ -31,6 +31,41 @@ async function orRefusal<T>(directory: string, work: () => Promise<T>): Promise<
         evidence: { directory, reason },
       }),
     ];
+  }
+}
+
+/**
+ * Makes a folder and the folders above it that are missing, one by one.
+ *
+ * The system's own recursive call is not used, because it never returns where a folder refuses to be made and its parent
+ * exists, as below /proc.
+ */
+async function makeFolder(directory: string): Promise<void> {
+  const missing: string[] = [];
+  for (let folder = directory; ; folder = dirname(folder)) {
+    const refusal = await tryFolder(folder);
+    if (refusal === null) break;
+    if (refusal.code !== 'ENOENT' || dirname(folder) === folder) throw refusal;
+    missing.push(folder);
+  }
+  for (const folder of missing.reverse()) {
+    const refusal = await tryFolder(folder);
+    if (refusal !== null) throw refusal;
+  }
+}
+
+/** Null when the folder exists in the end, whoever made it. */
+async function tryFolder(folder: string): Promise<NodeJS.ErrnoException | null> {
+  try {
+    await mkdir(folder);
+    return null;
+  } catch (error) {
+    // A read-only file system may refuse a folder that is there before it looks whether it is.
+    const isThere = await stat(folder).then(
+      (found) => found.isDirectory(),
+      () => false,
+    );
+    return isThere ? null : (error as NodeJS.ErrnoException);
   }
 }
 
@@ -71,7 +106,7 @@ async function writeWhole(directory: string, fileName: string, text: string): Pr
  */
 export async function prepareRunDirectory(directory: string): Promise<readonly Message[]> {
   const tried = await orRefusal(directory, async () => {
-    await mkdir(directory, { recursive: true });
+    await makeFolder(directory);
     const trial = join(directory, `.${process.pid}.trial`);
     const handle = await open(trial, 'w');
     await handle.close();
@@ -91,7 +126,7 @@ export async function writeRecord(directory: string, record: RunRecord, endedAt:
   const id = runId(endedAt, text);
   const fileName = `${id}.json`;
   const refusal = await orRefusal(directory, async () => {
-    await mkdir(directory, { recursive: true });
+    await makeFolder(directory);
     await writeWhole(directory, fileName, text);
   });
   return refusal === undefined

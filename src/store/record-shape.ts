@@ -17,7 +17,12 @@ export const planShape = z.object({
 });
 
 /** What a replay needs of a record; the fields around it may come and go with versions. */
-export const replayShape = z.looseObject({ schemaVersion: z.literal(1), plan: planShape });
+export const replayShape = z.looseObject({
+  schemaVersion: z.literal(1),
+  plan: planShape,
+  // Only for a remark; a record without it is replayed all the same.
+  scenario: z.looseObject({ sha256: z.string() }).optional().catch(undefined),
+});
 
 const estimate = z.looseObject({
   value: z.number(),

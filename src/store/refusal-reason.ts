@@ -1,8 +1,11 @@
+/** Why a folder cannot be read as a file. */
+export const IS_FOLDER = 'it is a folder, not a file';
+
 const REASONS: Readonly<Record<string, string>> = {
   ENOENT: 'there is no such file or folder',
   EACCES: 'permission is denied',
   EPERM: 'the operation is not permitted',
-  EISDIR: 'it is a folder, not a file',
+  EISDIR: IS_FOLDER,
   ENOTDIR: 'a part of its path is a file, not a folder',
   EEXIST: 'a file of that name is in the way',
   EROFS: 'the file system can only be read',

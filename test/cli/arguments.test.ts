@@ -68,7 +68,7 @@ describe('--budget', () => {
     ['-3s', 'is no length of time'],
     ['soon', 'is no length of time'],
     ['30x', 'is no length of time'],
-    ['0s', 'is out of range'],
+    ['0s', 'is no time at all'],
     ['1e9h', 'is out of range'],
   ])('refuses "%s"', (text, words) => {
     expect(outcome(parseBudget(text))).toBe(`command-line: --budget ${text} ${words}.`);

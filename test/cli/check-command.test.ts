@@ -38,9 +38,38 @@ describe('tarry check', () => {
     expect(document.messages.length).toBeGreaterThanOrEqual(2);
   });
 
-  it('refuses a constant that the scenario does not have', async () => {
+  it('refuses a constant that the scenario does not have, as a mistake of the call', async () => {
     const { code, stderr } = await tarry(['check', '-', '--with', 'spred=0.25'], smallScenario);
-    expect(code).toBe(1);
+    expect(code).toBe(2);
     expect(stderr).toContain('spread');
+  });
+
+  it.each([
+    ['--with', 'nope=1'],
+    ['--with', 'spread=1/0'],
+    ['--with', 'spread=('],
+    ['--seed', ''],
+    ['--width', '1%'],
+  ])('ends with 2 for %s %s, which the scenario cannot follow', async (...option) => {
+    const { code, stdout } = await tarry(['check', '-', '--json', ...option], smallScenario);
+    expect(code).toBe(2);
+    expect(JSON.parse(stdout).messages.length).toBeGreaterThan(0);
+  });
+
+  it('ends with 1 where the file has mistakes too', async () => {
+    const wrong = smallScenario.replace('rate - upkeep', 'rate - upkep');
+    expect((await tarry(['check', '-', '--with', 'nope=1'], wrong)).code).toBe(1);
+  });
+
+  it('lays out thousands of settings at once', async () => {
+    const many = Array.from({ length: 1990 }, (_, k) => `  c${k}: ${k}\n`).join('');
+    const begin = performance.now();
+    const { code, stdout } = await tarry(
+      ['check', '-'],
+      smallScenario.replace('  rate: 0.05\n', `  rate: 0.05\n${many}`),
+    );
+    expect([code, stdout.includes('constants.c1989')]).toEqual([0, true]);
+    // Two seconds on an idle machine; the tests run beside others.
+    expect(performance.now() - begin).toBeLessThan(6000);
   });
 });

@@ -58,6 +58,26 @@ describe('tarry value', () => {
     expect(stderr).toContain(names[0]!.replace('.json', ''));
   });
 
+  it('remarks that a plan comes from another text, and replays it all the same', async () => {
+    const kept = join(folder, 'other.json');
+    await writeFile(kept, (await tarry(['value', file, '--json', ...few])).stdout);
+    const same = await tarry(['value', file, '--json', '--plan', kept, ...few]);
+    expect(same.stderr).not.toContain('another scenario text');
+    const changed = smallScenario.replace('spread: 0.20', 'spread: 0.21');
+    const other = await tarry(['value', '-', '--json', '--plan', kept, ...few], changed);
+    expect([other.code, JSON.parse(other.stdout).plan]).toEqual([0, JSON.parse(same.stdout).plan]);
+    expect(other.stderr).toContain(`The plan in ${kept} comes from another scenario text`);
+  });
+
+  it('refuses a budget where the file fixes the counts, and a run directory that cannot be made', async () => {
+    const budget = await tarry(['value', file, '--budget', '1s', ...few]);
+    expect(budget.code).toBe(2);
+    expect(budget.stderr).toContain('contradicts `--budget`');
+    const { code, stderr } = await tarry(['value', file, '--run-dir', '/proc/foo', ...few]);
+    expect(code).toBe(1);
+    expect(stderr).toContain('run-directory-unwritable');
+  });
+
   it('refuses a scenario with mistakes, with 1', async () => {
     const wrong = smallScenario.replace('at expiry: lapse', 'at expiry: laps');
     const { code, stdout, stderr } = await tarry(['value', '-', '--json', ...few], wrong);

@@ -62,6 +62,12 @@ export const scenarioCodeRows: readonly CodeRow[] = [
   ['not-finite-value', constant('1 / 0')],
   ['value-out-of-range', driver('start: 1, law: normal, volatility: -1')],
   ['constant-cycle', constant('a')],
+  [
+    'too-many-constants',
+    from(
+      scenarioText({ constants: `constants: { ${Array.from({ length: 2001 }, (_, k) => `c${k}: 1`).join(', ')} }` }),
+    ),
+  ],
   ['bad-date', from(scenarioText({ before: 'as of: 2027-02-30' }))],
   ['unknown-law', driver('start: 1, law: gravity')],
   ['key-of-another-law', driver('start: 1, law: normal, volatility: 1, speed: 2')],

@@ -120,6 +120,28 @@ test('near names come from what may be used, functions and laws of the host neve
   expect(near('maxx(1, 2)')).toEqual([['max']]);
 });
 
+test.each([
+  ['ln(fuel)', 'The natural logarithm is log(x).'],
+  ['log10(fuel)', 'log(x) / log(10)'],
+  ['pow(fuel, 2)', 'a ^ b'],
+  ['avg(lot)', 'mean(family)'],
+  ['Average(lot)', 'mean(family)'],
+  ['exp1(fuel)', '`exp`'],
+  ['yes', 'a comparison, as x > 0'],
+  ['if(true, 1, 2)', 'a comparison, as x > 0'],
+])('%s says what is meant', (text, mend) => {
+  expect(checkExpression(treeOf(text), scope, 'number').map((problem) => problem.mend)).toEqual([
+    expect.stringContaining(mend),
+  ]);
+});
+
+test('a name with two meanings raises nothing more', () => {
+  const unclear: Scope = { ...scope, unclear: new Set(['lot']) };
+  expect(problems('largest(lot) + lot[7] + lot + max(lot, 1) + nowhere', 'number', unclear)).toEqual([
+    'unknown-name:nowhere',
+  ]);
+});
+
 test('where `number` is known, an index is checked for every member', () => {
   const members: Scope = { ...scope, allowed: new Set(['constant', 'number', 'family']) };
   expect(problems('lot[number]', 'number', members)).toEqual([]);

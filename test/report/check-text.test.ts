@@ -40,7 +40,7 @@ describe('the text of a check', () => {
 
   it('forecasts memory and work, and says what only the pilot knows', () => {
     const text = checkReport(findings);
-    expect(text).toMatch(/memory at the peak +about 120 MB of the machine's 16 GB/);
+    expect(text).toMatch(/memory at the peak +about 126 MB of the machine's 17.2 GB/);
     expect(text).toMatch(/regression +10 columns, 3 martingale polynomials/);
     expect(text).toMatch(/work to fit the rule +about 1\.2 million path-dates/);
     expect(text).toMatch(/work for the bounds +set by the pilot/);

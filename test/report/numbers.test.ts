@@ -70,12 +70,14 @@ describe('counts, shares, times, memory', () => {
     ]);
   });
 
-  it('says memory in units of 1024', () => {
-    expect([512, 1536, 120 * 1024 ** 2, 16 * 1024 ** 3].map(memory)).toEqual([
+  it('says memory in units of 1000 and never as a power of ten', () => {
+    expect([512, 1536, 120e6, 25.3e9, 999.9e6, 2.884e12].map(memory)).toEqual([
       '512 bytes',
-      '1.5 KB',
+      '1.54 KB',
       '120 MB',
-      '16 GB',
+      '25.3 GB',
+      '1 GB',
+      '2,880 GB',
     ]);
   });
 });

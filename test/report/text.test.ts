@@ -29,7 +29,8 @@ describe('the text of a run', () => {
       'fitted rule, one exercise per path',
     ]);
     expect(row(text, 'upper bound')).toEqual(['upper bound', '16.1668', '0.0022', '61,440', 'one-step martingale']);
-    expect(row(text, 'another upper bound').slice(0, 4)).toEqual(['another upper bound', '16.171', '0.012', '1,024']);
+    const beside = 'upper bound (beside the bracket)';
+    expect(row(text, beside).slice(0, 4)).toEqual([beside, '16.171', '0.012', '1,024']);
     expect(row(text, 'gap').slice(0, 3)).toEqual(['gap', '0.0125', '0.0012']);
   });
 
@@ -82,6 +83,19 @@ describe('the text of a run', () => {
   });
 });
 
+describe('a narrow terminal', () => {
+  it('wraps every sentence, and the command not at all', () => {
+    const text = textReport({ ...sampleRecord, advice: [sampleAdvice] }, { width: 40 });
+    for (const line of text.split('\n')) {
+      const isTableOrCommand = /─|\d {3}|made by|bound {2,}|upper bound less|tarry value|share of|▪|never {2,}|\^/.test(
+        line,
+      );
+      if (!isTableOrCommand) expect(line.length, line).toBeLessThanOrEqual(40);
+    }
+    expect(text).toContain('  tarry value orchard.yaml');
+  });
+});
+
 describe('the gap', () => {
   it('says between which estimates it lies', () => {
     expect(row(textReport(sampleRecord), 'gap')[3]).toBe('upper bound less lower bound');
@@ -94,7 +108,7 @@ describe('who decides', () => {
   it('gives an issuer the rule as the upper and martingales as the lower bounds', () => {
     expect(row(textReport(issuerRecord), 'upper bound')[4]).toBe('fitted rule, one exercise per path');
     expect(row(textReport(issuerRecord), 'lower bound')[4]).toBe('one-step martingale');
-    expect(row(textReport(issuerRecord), 'another lower bound')[1]).toBe('16.130');
+    expect(row(textReport(issuerRecord), 'lower bound (beside the bracket)')[1]).toBe('16.130');
     expect(text).toContain('Value to the holder: between');
     expect(text).toContain(
       'The issuer decides and wants to pay as little as it can. The upper bound is what the holder receives',
@@ -118,9 +132,18 @@ describe('doubt', () => {
 
   it('shows a crossing as it was estimated', () => {
     const text = textReport({ ...sampleRecord, bracket95: { low: 16.2, high: 16.1 } });
-    expect(text.split('\n')[1]).toBe(
+    expect(oneLine(text)).toContain(
       'No bracket: its low end, 16.2000 crowns, is above its high end, 16.1000. The bounds cross; see the advice.',
     );
+  });
+
+  it('says that estimates cross within their error, and only then', () => {
+    const crossed: RunRecord = { ...sampleRecord, upper: { ...sampleRecord.upper, value: 16.154 } };
+    const words = 'the estimates cross within their error, and the bracket is valid.';
+    expect(oneLine(textReport(crossed))).toContain(words);
+    expect(oneLine(textReport(sampleRecord))).not.toContain(words);
+    const doubted = { ...crossed, advice: [{ ...sampleAdvice, code: 'crossed-bounds' }] };
+    expect(oneLine(textReport(doubted))).not.toContain(words);
   });
 
   it('says that a run was stopped', () => {
@@ -150,9 +173,41 @@ describe('odd records', () => {
     };
     const text = textReport(record);
     expect(row(text, 'never')[1]).toBe('100.0%');
-    expect(oneLine(text)).toContain('Every count was given; there was no pilot.');
-    for (const word of ['Andersen', 'another', 'Of the paths', 'Checks that', 'Kept', 'NaN', 'undefined', 'Infinity']) {
+    expect(oneLine(text)).toContain('There was no pilot: the outer and inner counts were given.');
+    for (const word of [
+      'Andersen',
+      'beside the bracket',
+      'Of the paths',
+      'Checks passed',
+      'Kept',
+      'NaN',
+      'undefined',
+      'Infinity',
+    ]) {
       expect(text).not.toContain(word);
+    }
+  });
+
+  it('shows an exact value as one number, even where rounding crosses the bounds', () => {
+    const sure = { standardError: 1e-17, halfWidth95: 2e-17 };
+    for (const [low, high] of [
+      [0.9512294245005, 0.9512294245007],
+      [0.9512294245007, 0.9512294245005],
+    ] as const) {
+      const record: RunRecord = {
+        ...sampleRecord,
+        lower: { ...sampleRecord.lower, ...sure, value: low },
+        upper: { ...sampleRecord.upper, ...sure, value: high },
+        gap: { ...sure, value: high - low },
+        bracket95: { low, high },
+        pilot: { ...sampleRecord.pilot!, expectedWidth: 1e-17 },
+      };
+      const text = textReport(record);
+      expect(oneLine(text)).toContain('Value to the holder: 0.9512294245 crowns. Both bounds give it on every path');
+      expect(row(text, 'lower bound').slice(1, 3)).toEqual(['0.9512294245', '0']);
+      expect(row(text, 'gap').slice(1, 3)).toEqual(['0', '0']);
+      expect(oneLine(text)).toContain('found no sampling error');
+      expect(text).not.toMatch(/0\.0{6}|No bracket|cross within/);
     }
   });
 
@@ -167,7 +222,7 @@ describe('odd records', () => {
       bracket95: { low: 0, high: 0 },
     };
     expect(textReport(record).split('\n')[1]).toBe(
-      'Value to the holder: between 0.000000 and 0.000000 crowns (95% bracket).',
+      'Value to the holder: 0 crowns. Both bounds give it on every path: it has no sampling error.',
     );
   });
 

@@ -7,7 +7,7 @@ const valuesOf = (constants: string, overrides = {}) =>
   Object.fromEntries(modelOf(withConstants(constants), overrides).constants.map(({ name, value }) => [name, value]));
 
 test('constants may be stated through one another in any order', () => {
-  expect(valuesOf('  a: b * 2\n  b: { value: c + 1 }\n  c: 0x10\n  d: -c\n  e: +5')).toEqual({
+  expect(valuesOf('  a: b * 2\n  b: { value: c + 1 }\n  c: 16.\n  d: -c\n  e: +5')).toEqual({
     rate: 0.05,
     a: 34,
     b: 17,
@@ -83,9 +83,54 @@ test('a constant and a driver cannot share a name', () => {
   expect(mistakes(text)).toEqual(expected);
 });
 
-test('a hundred thousand characters of constants in a chain are computed without recursion', () => {
-  const chain = Array.from({ length: 8000 }, (_, k) => `  c${k}: c${k + 1} + 1`).join('\n');
-  expect(valuesOf(`${chain}\n  c8000: 0`).c0).toBe(8000);
+test('constants in a long chain are computed without recursion', () => {
+  const chain = Array.from({ length: 1990 }, (_, k) => `  c${k}: c${k + 1} + 1`).join('\n');
+  expect(valuesOf(`${chain}\n  c1990: 0`).c0).toBe(1990);
+});
+
+test('more than two thousand constants are refused at the first beyond', () => {
+  const many = (count: number) => Array.from({ length: count }, (_, k) => `  c${k}: 1`).join('\n');
+  expect(mistakes(withConstants(many(1999)))).toEqual([]);
+  const text = withConstants(many(2000));
+  const line = text.split('\n').findIndex((one) => one.includes('c1999')) + 1;
+  expect(mistakes(text)).toEqual([`too-many-constants ${line}:3+5`]);
+});
+
+test.each([
+  ['0x10', '16'],
+  ['-0x10', 'decimal'],
+  ['0o17', '15'],
+])('%s is refused, with its decimal', (number, mend) => {
+  const { text, expected } = marked(
+    withConstants(`  a: «${number}»`),
+    number.startsWith('-') ? 'expression-syntax' : 'wrong-type',
+  );
+  expect(mistakes(text).map((found) => found.split(' ')[0])).toEqual(expected.map((found) => found.split(' ')[0]));
+  expect(readScenario(text).messages[0]!.mend).toContain(mend);
+});
+
+test('an override that names no constant lists ten at most', () => {
+  const mendOf = (count: number) => {
+    const many = Array.from({ length: count }, (_, k) => `  c${k}: 1`).join('\n');
+    return readScenario(withConstants(many), { with: { nowhere: '1' } }).messages[0]!.mend;
+  };
+  expect(mendOf(2)).toBe('Name a constant of the scenario: `rate`, `c0` or `c1`.');
+  expect(mendOf(20)).toContain('`c8` or one of 11 more.');
+});
+
+test('an override without a finite value is named', () => {
+  const [message] = readScenario(withConstants('  a: 1'), { with: { a: '1/0' } }).messages;
+  expect(message).toMatchObject({ code: 'not-finite-value', place: null, evidence: { override: '--with' } });
+  expect(message!.what).toBe('The override `a = 1/0`: the expression gives no finite number.');
+});
+
+test('a constant named like a family is told once', () => {
+  const text = scenarioText({
+    constants: 'constants: { rate: 0, lot: 3, b: lot * 2 }',
+    contract: 'contract: { decision dates: [1], payoff: "largest(lot) + lot[2] + b + lot", discount: rate }',
+    correlation: 'correlation: [{ among: lot, value: 0.2 }]',
+  });
+  expect(mistakes(text)).toEqual(['name-used-twice 3:3+3']);
 });
 
 test('a mistake in a folded or escaped text is placed at its beginning', () => {

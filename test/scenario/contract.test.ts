@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import { readScenario } from '#built/scenario/read-scenario.js';
 import { marked, mistakes, modelOf, scenarioText } from './scenario-texts.js';
 
 const withContract = (rest: string) => scenarioText({ contract: `contract:\n  decision dates: [1]\n${rest}` });
@@ -43,10 +44,25 @@ test.each([
     '  payoff: «a» + «b» + «__proto__»\n  discount: «c»',
     ['unknown-name', 'unknown-name', 'unknown-name', 'unknown-name'],
   ],
-  ['  payoff: fuel\n  at expiry: «process»\n  discount: 0', ['unknown-name']],
+  ['  payoff: fuel\n  at expiry: «process»\n  discount: 0', ['wrong-choice']],
+  ['  payoff: fuel\n  at expiry: 2 * «process»\n  discount: 0', ['unknown-name']],
   ['  payoff: "max(0, «strik»)"\n  discount: 0', ['unknown-name']],
   ["  payoff: 'max(0, «strik»)'\n  discount: 0", ['unknown-name']],
 ])('%s', (contract, codes) => {
   const { text, expected } = marked(withContract(contract), ...codes);
   expect(mistakes(text)).toEqual(expected);
+});
+
+test.each([
+  ['lapsed', 'Near name: `lapse`.'],
+  ['no', 'Near name: `lapse`.'],
+  ['forcd', 'Near name: `forced`.'],
+  ['rat', 'Near name: `rate`.'],
+  ['nothing at all', 'or an amount.'],
+])('at expiry: %s offers the words of the language', (word, mend) => {
+  const text = withContract(`  payoff: fuel\n  at expiry: ${word}\n  discount: 0`);
+  const { messages } = readScenario(text);
+  expect(messages.map(({ code }) => code)).toEqual(['wrong-choice']);
+  expect(messages[0]!.mend).toContain('`lapse`');
+  expect(messages[0]!.mend).toContain(mend);
 });

@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import { readScenario } from '#built/scenario/read-scenario.js';
 import { marked, mistakes, modelOf, scenarioText } from './scenario-texts.js';
 
 const withDates = (dates: string) =>
@@ -70,4 +71,9 @@ test.each([
     const { text, expected } = marked(withDates(dates), code);
     expect(mistakes(text)).toEqual(expected);
   }
+});
+
+test('no rounding of the last bits shows in a message', () => {
+  const { messages } = readScenario(plain('{ first: 0.1, last: 3, every: 0.4 }'));
+  expect(messages[0]!.what).toBe('From 0.1 in steps of 0.4 the dates reach 2.9 and then pass 3.');
 });

@@ -62,7 +62,7 @@ test.each([
 
 test('too many drivers are refused before any matrix is made', () => {
   const { text, expected } = marked(
-    scenarioText({ drivers: '«drivers»:\n  a: { count: 1001, start: 1, law: normal, volatility: 1 }', contract }),
+    scenarioText({ drivers: 'drivers:\n  a: { count: «1001», start: 1, law: normal, volatility: 1 }', contract }),
     'too-many-drivers',
   );
   expect(mistakes(text)).toEqual(expected);

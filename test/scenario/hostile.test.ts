@@ -152,6 +152,18 @@ test.each([
   ['unknown keys', many(20_000, (k) => `k${k}: 1\n`)],
   ['keys in one driver', `drivers: { p: { law: normal, ${many(20_000, (k) => `x${k}: 1, `)}} }\n${contract}`],
   ['unknown names', `constants:\n${many(20_000, (k) => `  c${k}: d${k}\n`)}${drivers}${contract}`],
+  ['constants in one line', `constants: { ${many(20_000, (k) => `c${k}: ${k}, `)} }\n${drivers}${contract}`],
+  ['drivers without a law', `drivers:\n${many(9000, (k) => `  d${k}: { lw: normal }\n`)}${contract}`],
+  ['tabs', many(60_000, () => '\ta: 1\n')],
+  ['quotes in lines', many(60_000, () => '  "a: 1\n')],
+  [
+    'formulas with a word cut off',
+    `constants:\n${many(90, (k) => `  c${k}: ${'a'.repeat(9000)} b\n`)}${drivers}${contract}`,
+  ],
+  [
+    'formulas with a long gap',
+    `constants:\n${many(90, (k) => `  c${k}: "a${' '.repeat(9000)}b"\n`)}${drivers}${contract}`,
+  ],
   ['circles', `constants:\n${many(10_000, (k) => `  a${k}: b${k}\n  b${k}: a${k}\n`)}${drivers}${contract}`],
   [
     'formulas with a mistake in each name',

@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import type { ScenarioOverrides } from '#built/scenario/overrides.js';
 import { readScenario } from '#built/scenario/read-scenario.js';
 import { marked, mistakes, modelOf, scenarioText } from './scenario-texts.js';
 
@@ -82,4 +83,22 @@ test.each([
 test('a width from outside contradicts counts in the file, at their place', () => {
   const { text, expected } = marked(withMethod('  counts: { «outer»: 5 }'), 'width-and-counts');
   expect(mistakes(text, { width: '1%' })).toEqual(expected);
+});
+
+test('a mistake of an override says which option it is', () => {
+  const optionsOf = (text: string, overrides: ScenarioOverrides) =>
+    readScenario(text, overrides).messages.map(({ what, evidence }) => [evidence.override, what.includes('`--')]);
+  const fixed = withMethod('  counts: { outer: 5, inner: 3 }');
+  expect(optionsOf(fixed, { width: '1%' })).toEqual([
+    ['--width', true],
+    ['--width', true],
+  ]);
+  expect(optionsOf(fixed, { budgetSeconds: 3 })).toEqual([['--budget', true]]);
+  expect(optionsOf(scenarioText(), { seed: '' })).toEqual([['--seed', false]]);
+});
+
+test('a budget needs one count that is free', () => {
+  const { text, expected } = marked(withMethod('  counts: { «outer»: 5, inner: 3 }'), 'bad-override');
+  expect(mistakes(text, { budgetSeconds: 3 })).toEqual(expected);
+  expect(mistakes(withMethod('  counts: { outer: 5 }'), { budgetSeconds: 3 })).toEqual([]);
 });

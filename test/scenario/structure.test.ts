@@ -100,6 +100,25 @@ test('all mistakes of structure come at once', () => {
   expect(mistakes(text.text)).toEqual(text.expected);
 });
 
+test.each([
+  ['a key of the contract', `${drivers}\n${contract.replace('payoff', '«pay off»')}`],
+  ['a group at the top', `${drivers.replace('drivers', '«driver»')}\n${contract}`],
+  ['the law', `${drivers.replace('law', '«lw»')}\n${contract.replace('payoff', 'payoff')}`],
+  ['a no-break space in a key', `${drivers}\n${contract.replace('decision dates', '«decision\u00A0dates»')}`],
+])('a required key that is misspelt is told once: %s', (_name, text) => {
+  const { text: bare, expected } = marked(text, 'unknown-key');
+  expect(mistakes(bare)).toEqual(expected);
+});
+
+test('a required key that nothing stands for is missing beside an unknown one', () => {
+  const { text, expected } = marked(
+    `${drivers}\n«contract»: { decision dates: [1], «weather»: 1, discount: 0 }`,
+    'missing-key',
+    'unknown-key',
+  );
+  expect(mistakes(text)).toEqual(expected);
+});
+
 test('host-language names as keys are unknown keys and nothing else', () => {
   for (const key of ['constructor', 'toString', 'hasOwnProperty', 'valueOf', '__defineGetter__']) {
     expect(mistakes(`${scenarioText()}${key}: 1\n`)).toEqual([`unknown-key 9:1+${key.length}`]);

@@ -52,6 +52,22 @@ test.each([
   expect(message!.what).not.toMatch(/flow|implicit|scalar/i);
 });
 
+test.each([
+  ['a quote without an end', `title: «"»abc\n${rest}`],
+  [
+    'a quote that ends at a later one',
+    `${scenarioText({ before: "title:\n    «'»abc" }).replaceAll('\n  ', '\n    ')}`,
+  ],
+  ['tabs', rest.replace('  lot', '«\t»lot').replaceAll(/^ {2}/gm, '\t')],
+  ['line ends of a carriage return', `title: a«\r»${rest.replaceAll('\n', '\r')}`],
+  ['a NUL', `title: a«\0»b\n${rest}`],
+  ['an escape', `title: a\n# «\u001b»[2J\n${rest}`],
+  ['a no-break space behind a colon', rest.replace('discount: ', 'discount:«\u00A0»')],
+])('%s is one mistake where it begins', (_name, text) => {
+  const { text: bare, expected } = marked(text, 'not-yaml');
+  expect(mistakes(bare)).toEqual(expected);
+});
+
 test('a member of a family inside brackets needs quotes, and the message says so', () => {
   const text = scenarioText({ correlation: 'correlation: [{ between: [lot[2], fuel], value: 0 }]' });
   const { messages } = readScenario(text);

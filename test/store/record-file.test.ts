@@ -34,7 +34,17 @@ describe('keeping a record', () => {
     expect(await readdir(directory)).toEqual([`${written.id}.json`]);
     expect(await readFile(written.path, 'utf8')).toBe(recordText(sampleRecord));
     expect(await readRecord(written.path)).toEqual({ kind: 'read', record: sampleRecord });
-    expect(await readPlan(written.path)).toEqual({ kind: 'read', plan: sampleRecord.plan });
+    expect(await readPlan(written.path)).toEqual({
+      kind: 'read',
+      plan: sampleRecord.plan,
+      scenarioHash: sampleRecord.scenario.sha256,
+    });
+  });
+
+  it('comes back at once where a folder refuses to be made', async () => {
+    for (const directory of ['/proc/foo', '/proc/foo/bar', '/dev/null/runs', '']) {
+      expect((await prepareRunDirectory(directory)).map(({ code }) => code)).toEqual(['run-directory-unwritable']);
+    }
   });
 
   it('says so where nothing can be written', async () => {
@@ -50,7 +60,7 @@ describe('keeping a record', () => {
 describe('reading a plan', () => {
   it('passes over fields of other versions', async () => {
     const read = await planFrom({ schemaVersion: 1, plan: { ...sampleRecord.plan, later: 1 }, later: true });
-    expect(read).toEqual({ kind: 'read', plan: sampleRecord.plan });
+    expect(read).toEqual({ kind: 'read', plan: sampleRecord.plan, scenarioHash: null });
   });
 
   it('names everything that is missing', async () => {
@@ -79,12 +89,13 @@ describe('reading a plan', () => {
       await planFrom({ ...sampleRecord, plan: { ...sampleRecord.plan, [field]: value } }),
     );
     expect(others).toEqual([]);
+    expect(message).not.toMatch(/expected|Invalid|Too /);
     expect(message).toMatch(new RegExp(`^record-invalid: is not a record: \`plan\\.${field}\` is wrong`));
   });
 
   it('takes nested counts of 0, but not for a nested bound', async () => {
     const plan = { ...sampleRecord.plan, nestedOuterPathCount: 0, nestedInnerPathCount: 0 };
-    expect(await planFrom({ schemaVersion: 1, plan })).toEqual({ kind: 'read', plan });
+    expect(await planFrom({ schemaVersion: 1, plan })).toEqual({ kind: 'read', plan, scenarioHash: null });
     expect(codesAndWords(await planFrom({ schemaVersion: 1, plan: { ...plan, upper: 'andersen-broadie' } }))).toEqual([
       'record-invalid: asks for the Andersen-Broadie upper bound but gives it no paths.',
     ]);
@@ -106,7 +117,9 @@ describe('reading a plan', () => {
   it('says why a file cannot be read', async () => {
     const missing = await readPlan(join(folder, 'none.json'));
     expect(codesAndWords(missing)).toEqual(['file-unreadable: cannot be read: there is no such file or folder.']);
-    expect(codesAndWords(await readPlan(folder))[0]).toContain('it is a folder, not a file');
+    const directory = await readPlan(folder);
+    expect(codesAndWords(directory)[0]).toContain('it is a folder, not a file');
+    expect(directory.kind === 'refused' && directory.messages[0]!.mend).toContain('Name one record');
   });
 });
 
