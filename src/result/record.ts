@@ -77,6 +77,13 @@ export interface RunRecord {
   readonly uppers: readonly BoundEstimate[];
   readonly gap: Estimate;
   readonly bracket95: { readonly low: number; readonly high: number };
+  /** Other estimates of what the rule is worth, for comparison; none enters the bracket. */
+  readonly crossChecks: {
+    /** The rule's mean on the outer paths without any martingale: the plain estimate, with its far larger error. */
+    readonly plainLower: Estimate;
+    /** Worth of continuing today with the rule, by the nested bound's inner paths; null without that bound. */
+    readonly nestedContinuationToday: Estimate | null;
+  };
   readonly stepBias: null;
   readonly exact: null;
   readonly basis: { readonly columns: readonly string[]; readonly martingalePolynomials: readonly string[] };

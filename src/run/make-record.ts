@@ -83,6 +83,10 @@ export function makeRecord(findings: RunFindings): RunRecord {
     uppers: martingales,
     gap,
     bracket95,
+    crossChecks: {
+      plainLower: signed(estimateOf(outer.plain), sign),
+      nestedContinuationToday: nested === null ? null : signed(estimateOf(nested.continuationToday), sign),
+    },
     stepBias: null,
     exact: null,
     basis: { columns: programs.columns.map(({ name }) => name), martingalePolynomials: programs.polynomialNames },
@@ -95,6 +99,11 @@ export function makeRecord(findings: RunFindings): RunRecord {
     timing: findings.timing,
     versions: findings.versions,
   };
+}
+
+/** An estimate in the decider's sign as the holder sees it. */
+function signed(estimate: Estimate, sign: 1 | -1): Estimate {
+  return { ...estimate, value: sign * estimate.value };
 }
 
 /** Gap of the bracket's own two bounds: path by path where both stand on the same paths. */

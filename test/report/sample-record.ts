@@ -59,6 +59,10 @@ export const sampleRecord: RunRecord = {
   ],
   gap: { value: 0.012468, standardError: 0.0006, halfWidth95: 0.001176 },
   bracket95: { low: 16.150205, high: 16.168945 },
+  crossChecks: {
+    plainLower: { value: 16.21, standardError: 0.21, halfWidth95: 0.41 },
+    nestedContinuationToday: null,
+  },
   stepBias: null,
   exact: null,
   basis: {
