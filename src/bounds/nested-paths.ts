@@ -10,8 +10,10 @@ export interface NestedSums {
   readonly continuationToday: Moments;
 }
 
+/** The sums of no paths. */
 export const noNestedSums: NestedSums = { upper: noMoments, continuationToday: noMoments };
 
+/** Adds the sums of two stretches of paths, the earlier first. */
 export function mergeNestedSums(a: NestedSums, b: NestedSums): NestedSums {
   return {
     upper: mergeMoments(a.upper, b.upper),

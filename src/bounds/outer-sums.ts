@@ -23,6 +23,7 @@ export interface OuterSums {
   readonly neverCount: number;
 }
 
+/** The sums of no paths. */
 export const noOuterSums = (dateCount: number): OuterSums => ({
   lower: noMoments,
   upper: noMoments,

@@ -5,6 +5,7 @@ import type { OuterSums } from './outer-sums.js';
 
 /** Counts of the pilot: enough for spreads to about 3%. */
 export const pilotOuterPathCount = 1024;
+/** Inner points of the pilot; the first half of them is looked at apart. */
 export const pilotInnerPointCount = 32;
 
 const smallestOuterPathCount = 1024;
@@ -36,6 +37,7 @@ export interface PilotModel {
   readonly value: number;
 }
 
+/** The counts that a pilot decides. */
 export interface Counts {
   readonly outerPathCount: number;
   readonly innerPointCount: number;
@@ -75,6 +77,7 @@ export function expectedWidth(model: PilotModel, counts: Counts): number {
   return model.limitGap + model.gapPerInnerShare / counts.innerPointCount + noise / Math.sqrt(counts.outerPathCount);
 }
 
+/** What a plan must keep to. */
 export interface PlanRequest {
   readonly wantedWidth: number;
   /** Steps allowed, over all outer paths, dates and inner points. */

@@ -6,6 +6,7 @@ export type AtExpiry =
   | { readonly kind: 'forced' }
   | { readonly kind: 'pays'; readonly amount: PlacedExpression };
 
+/** The contract: who decides, when, and what is paid. */
 export interface Contract {
   readonly decidedBy: 'holder' | 'issuer';
   /** Strictly rising, in clock units; 0 is among them only if today is a decision date. */

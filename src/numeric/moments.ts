@@ -6,6 +6,7 @@ export interface Moments {
   readonly squares: number;
 }
 
+/** The moments of an empty sample. */
 export const noMoments: Moments = { count: 0, mean: 0, squares: 0 };
 
 /** Moments of `values[offset … offset + count - 1]` by two passes, in rising order. */

@@ -4,7 +4,9 @@ export interface Span {
   readonly end: number;
 }
 
+/** Operators between two operands, as the scenario writes them. */
 export type BinaryOperator = '+' | '-' | '*' | '/' | '^' | '<' | '<=' | '>' | '>=' | '==' | '!=' | 'and' | 'or';
+/** Operators in front of one operand. */
 export type UnaryOperator = '-' | 'not';
 
 /** A parsed expression: a plain tree, before any name was looked up. */

@@ -26,6 +26,7 @@ export const operations = {
   select: { code: 18, arity: 3 },
 } as const;
 
+/** The name of an operation. */
 export type Operation = keyof typeof operations;
 
 /** Operations whose two operands may change places without changing a bit of the result. */

@@ -1,6 +1,7 @@
 import type { Message } from '../messages/message.js';
 import type { CheckedModel, Setting, UpperMethod } from '../scenario/model.js';
 
+/** How a bound was made; `two-level` is reserved for a combination that is not built yet. */
 export type BoundMethod = 'rule' | UpperMethod | 'two-level';
 
 /** A mean over independent paths, in money of today. */
@@ -11,6 +12,7 @@ export interface Estimate {
   readonly halfWidth95: number | null;
 }
 
+/** A bound with the paths behind it and how it was made. */
 export interface BoundEstimate extends Estimate {
   readonly pathCount: number;
   readonly method: BoundMethod;
@@ -58,6 +60,7 @@ export interface DateFinding {
   readonly continuationMean: number | null;
 }
 
+/** The record of a run: what `--json` prints and what a report reads. Fields are added, never renamed. */
 export interface RunRecord {
   readonly schemaVersion: 1;
   readonly status: 'complete' | 'stopped';

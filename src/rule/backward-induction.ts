@@ -4,6 +4,7 @@ import type { SweepSums } from './fit-sweeps.js';
 import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
 
+/** The three kinds of sweep over the fit's paths at one date; `fit-sweeps.ts` says what each sums. */
 export type SweepKind = 'values' | 'residuals' | 'direction';
 
 /** The sweeps over all paths of the fit, wherever they run; results come in the order of the blocks. */

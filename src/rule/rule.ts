@@ -24,6 +24,7 @@ export function emptyRule(programs: Programs): Rule {
   };
 }
 
+/** Numbers on memory that all threads of a run share, zeros at first. */
 export function sharedNumbers(length: number): Float64Array<SharedArrayBuffer> {
   return new Float64Array(new SharedArrayBuffer(length * Float64Array.BYTES_PER_ELEMENT));
 }

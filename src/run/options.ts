@@ -2,6 +2,7 @@ import type { Message } from '../messages/message.js';
 import type { Forecast, Plan, RunRecord } from '../result/record.js';
 import type { CheckedScenario, UpperMethod } from '../scenario/model.js';
 
+/** How far a run is. */
 export interface Progress {
   readonly stage: 'fit' | 'pilot' | 'bounds' | 'nested';
   /** Work done and in all, in the stage's own counts; `total` is fixed within a stage. */
@@ -21,6 +22,7 @@ export interface Overrides {
   readonly upper?: UpperMethod;
 }
 
+/** Everything that a valuation takes beside the scenario. */
 export interface ValueOptions extends Overrides {
   /** Replays the counts of an earlier run instead of making a pilot. */
   readonly plan?: Plan;
@@ -39,6 +41,7 @@ export type ValueOutcome =
   | { readonly kind: 'refused'; readonly messages: readonly Message[] }
   | { readonly kind: 'stopped'; readonly stage: Progress['stage'] };
 
+/** A scenario without mistakes, with its settings and forecast; or its mistakes. */
 export type CheckOutcome =
   | {
       readonly kind: 'checked';

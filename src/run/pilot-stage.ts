@@ -16,6 +16,7 @@ import type { Environment } from './environment.js';
 import type { Progress, ValueOptions } from './options.js';
 import { Stopped } from './parcels.js';
 
+/** A plan with what it was made from. */
 export interface Planned {
   readonly plan: Plan;
   /** Null when every count was given. */

@@ -10,6 +10,7 @@ export interface Prepared {
   readonly programs: Programs;
 }
 
+/** A prepared scenario, or its mistakes. */
 export type PrepareOutcome =
   | { readonly kind: 'ready'; readonly prepared: Prepared }
   | { readonly kind: 'refused'; readonly messages: readonly Message[] };

@@ -26,8 +26,10 @@ export interface DriverFamily {
   readonly line: number;
 }
 
+/** The laws that can be simulated. */
 export type LawName = 'lognormal' | 'normal';
 
+/** The ways to the martingale bound of the bracket. */
 export type UpperMethod = 'one-step' | 'andersen-broadie' | 'regressed';
 
 /** How the bracket is to be made. Counts that are null are left to the pilot. */
@@ -43,6 +45,7 @@ export interface Method {
   readonly nestedInnerPathCount: number | null;
 }
 
+/** Where a setting came from. */
 export type Origin =
   | { readonly kind: 'line'; readonly line: number }
   | { readonly kind: 'command line' }

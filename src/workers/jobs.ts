@@ -52,6 +52,7 @@ export type ResultOf<J extends Job> = J extends { kind: 'simulate' }
       ? OuterSums
       : NestedSums;
 
+/** A job's result, or where a path left the finite numbers: data, so that it crosses threads whole. */
 export type JobReply =
   | { readonly ok: true; readonly result: ResultOf<Job> }
   | { readonly ok: false; readonly notFinite: NotFinitePlace };
