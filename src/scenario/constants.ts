@@ -176,6 +176,7 @@ function readOverrides(reading: Reading): Map<string, Override> {
   const constants = [...reading.symbols].filter(([, { kind }]) => kind === 'constant').map(([name]) => name);
   for (const [name, text] of Object.entries(overrides.with ?? {})) {
     const label = `The override ${quoted(`${name} = ${String(text)}`)}`;
+    if (reading.unclear.has(name)) continue;
     if (reading.symbols.get(name)?.kind !== 'constant') {
       findings.add({
         code: 'unknown-name',

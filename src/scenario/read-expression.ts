@@ -2,7 +2,7 @@ import { quoted } from '../messages/printable.js';
 import { checkExpression, type ExpressionType, usedSymbols } from '../program/check-expression.js';
 import { evaluateConstant } from '../program/evaluate.js';
 import type { Expression, PlacedExpression } from '../program/expression.js';
-import { parseExpression } from '../program/parse.js';
+import { parseExpression, partsOf } from '../program/parse.js';
 import type { ExpressionProblem } from '../program/scan-expression.js';
 import type { Scope } from '../program/scope.js';
 import { constantScope, type Reading } from './reading.js';
@@ -118,10 +118,14 @@ function notDecimal(node: ScalarNode, reading: Reading): null {
 
 /** The value of a checked expression of constants and `number`; null while a constant in it has no value. */
 export function computed(tree: Expression, reading: Reading, number = 1): number | null {
-  for (const name of usedSymbols(tree, reading).constants) {
-    if (reading.unclear.has(name) || !reading.constantValues.has(name)) return null;
-  }
+  if (isUnclear(tree, reading)) return null;
+  for (const name of usedSymbols(tree, reading).constants) if (!reading.constantValues.has(name)) return null;
   return evaluateConstant(tree, (name) => (name === 'number' ? number : reading.constantValues.get(name)!));
+}
+
+function isUnclear(tree: Expression, reading: Reading): boolean {
+  if (tree.kind === 'name') return reading.unclear.has(tree.name);
+  return reading.unclear.size > 0 && partsOf(tree).some((part) => isUnclear(part, reading));
 }
 
 /** A sentence's first letter, unless it is a quoted name. */

@@ -14,6 +14,7 @@ import { refuseUnbuilt } from './not-built.js';
 import type { ScenarioOverrides } from './overrides.js';
 import { readTree } from './read-tree.js';
 import type { Reading } from './reading.js';
+import { setFaultsAside } from './set-aside.js';
 import { Settings } from './settings.js';
 import { SourceText } from './source-text.js';
 import { checkStructure } from './structure.js';
@@ -25,9 +26,12 @@ export interface ReadScenario {
   readonly messages: readonly Message[];
 }
 
+/** Faults of structure beyond which the rest of a text is not worth reading before they are mended. */
+const mostSetAside = 20;
+
 /**
- * Reads a scenario in three phases: text to tree, structure, meaning. Every mistake of a phase is given at once; the next
- * phase begins only when there is none.
+ * Reads a scenario in three phases: text to tree, structure, meaning. Every mistake of a phase is given at once; what
+ * breaks the structure is set aside, so that the mistakes of meaning in the rest are given with it.
  *
  * The text may come from anybody: it cannot crash the reader, hold it up, or reach anything by a name.
  *
@@ -43,17 +47,19 @@ export function readScenario(text: string, overrides: ScenarioOverrides = {}): R
   if (root === null) return refused();
   checkStructure(root, findings);
   limitConstants(root, findings);
-  if (findings.count > 0) return refused();
+  if (findings.count > mostSetAside) return refused();
+  const remainder = findings.count > 0 ? setFaultsAside(root) : { root, names: new Set<string>() };
+  if (remainder === null) return refused();
   const symbols = new Map<string, ScopeSymbol>();
   const settings = new Settings(source);
   const reading: Reading = {
     source,
-    root,
+    root: remainder.root,
     overrides,
     findings,
     settings,
     symbols,
-    unclear: new Set(),
+    unclear: new Set(remainder.names),
     constantValues: new Map(),
   };
   const model = readModel(reading);

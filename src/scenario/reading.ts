@@ -14,7 +14,7 @@ export interface Reading {
   readonly settings: Settings;
   /** Constants, drivers and families in file order, and the words `t` and `number`. */
   readonly symbols: Map<string, ScopeSymbol>;
-  /** Names of two things: told as a mistake once, and nothing that uses them is judged further. */
+  /** Names of two things, or of what was set aside: told as a mistake once, and nothing that uses them is judged further. */
   readonly unclear: Set<string>;
   /** Constants whose value could be computed. */
   readonly constantValues: Map<string, number>;

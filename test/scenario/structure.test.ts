@@ -25,8 +25,8 @@ test.each([
   ['a key that belongs elsewhere', `${drivers}\n${contract}\n«payoff»: 3`, ['unknown-key'], 'contract'],
   [
     'a misspelt key of a clause that is not built',
-    `${drivers}\ncontract: { decision dates: [1], payoff: 1, discount: 0, rights: { count: 2, «weight»: 1 } }`,
-    ['unknown-key'],
+    `${drivers}\ncontract: { decision dates: [1], payoff: 1, discount: 0, «rights»: { count: 2, «weight»: 1 } }`,
+    ['not-built-yet', 'unknown-key'],
     '',
   ],
   [
