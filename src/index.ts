@@ -1,13 +1,15 @@
 import { checkScenario } from './run/check.js';
 import type { CheckOutcome, Overrides, ValueOptions, ValueOutcome } from './run/options.js';
 import { valueScenario } from './run/value.js';
-import { programVersion, thisMachine } from './workers/machine.js';
+import { thisMachine } from './workers/machine.js';
 
 export type { Message, Place, Severity } from './messages/message.js';
 export { renderMessages } from './messages/render.js';
 export type { BoundEstimate, Estimate, Forecast, Plan, RunRecord } from './result/record.js';
 export type { CheckOutcome, Overrides, Progress, ValueOptions, ValueOutcome } from './run/options.js';
 export type { CheckedScenario, Setting } from './scenario/model.js';
+export { upperMethods } from './scenario/upper-methods.js';
+export { programVersion as version } from './workers/machine.js';
 
 /**
  * Values a scenario and gives the record that `tarry value --json` prints.
@@ -27,9 +29,4 @@ export function value(scenario: string | object, options: ValueOptions = {}): Pr
 /** Checks a scenario, echoes its settings and forecasts memory and work, without drawing a path. */
 export async function check(scenario: string | object, options: Overrides = {}): Promise<CheckOutcome> {
   return checkScenario(scenario, options, thisMachine());
-}
-
-/** The version of this package. */
-export function version(): string {
-  return programVersion();
 }

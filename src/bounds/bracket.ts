@@ -6,10 +6,15 @@ export interface Bound extends MeanEstimate {
   readonly pathCount: number;
 }
 
-/** Turns moments in the decider's sign into a bound as the holder sees it. */
-export function boundOf(moments: Moments, sign: 1 | -1): Bound {
+/** Turns moments in the decider's sign into an estimate as the holder sees it. */
+export function asHeld(moments: Moments, sign: 1 | -1): MeanEstimate {
   const estimate = estimateOf(moments);
-  return { ...estimate, value: sign * estimate.value, pathCount: moments.count };
+  return { ...estimate, value: sign * estimate.value };
+}
+
+/** The same with the count of paths behind it. */
+export function boundOf(moments: Moments, sign: 1 | -1): Bound {
+  return { ...asHeld(moments, sign), pathCount: moments.count };
 }
 
 /**

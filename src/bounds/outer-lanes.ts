@@ -38,14 +38,14 @@ export class OuterLanes {
   ) {
     const zeros = () => new Float64Array(lanes);
     const lowest = () => zeros().fill(Number.NEGATIVE_INFINITY);
-    [this.#martingale, this.#halfMartingale, this.#regressed, this.#lower, this.#plain] = [
-      zeros(),
-      zeros(),
-      zeros(),
-      zeros(),
-      zeros(),
-    ];
-    [this.#upper, this.#halfUpper, this.#regressedUpper] = [lowest(), lowest(), lowest()];
+    this.#martingale = zeros();
+    this.#halfMartingale = zeros();
+    this.#regressed = zeros();
+    this.#lower = zeros();
+    this.#plain = zeros();
+    this.#upper = lowest();
+    this.#halfUpper = lowest();
+    this.#regressedUpper = lowest();
     this.#exercisedAt = new Int32Array(lanes).fill(this.#running);
   }
 

@@ -1,3 +1,4 @@
+import { upperMethods } from '../index.js';
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
 import { nearest } from '../messages/nearest.js';
@@ -8,9 +9,6 @@ import type { Overrides } from '../run/options.js';
 export type Parsed<T> = { readonly value: T } | { readonly mistake: Message };
 
 type UpperMethod = NonNullable<Overrides['upper']>;
-
-/** The ways to make the martingale bound that `--upper` takes. */
-export const UPPER_METHODS: readonly UpperMethod[] = ['one-step', 'andersen-broadie', 'regressed'];
 
 const MOST_WORKERS = 512;
 const SECONDS_PER: Readonly<Record<string, number>> = { s: 1, m: 60, h: 3600 };
@@ -98,10 +96,10 @@ export function parseWorkers(text: string): Parsed<number> {
 
 /** Reads `--upper`: how the martingale bound is made. */
 export function parseUpper(text: string): Parsed<UpperMethod> {
-  const found = UPPER_METHODS.find((method) => method === text.trim());
+  const found = upperMethods.find((method) => method === text.trim());
   if (found !== undefined) return { value: found };
-  const near = nearest(text, UPPER_METHODS);
-  const mend = near.length > 0 ? `Did you mean ${listed(near, 'or')}?` : `Write --upper ${UPPER_METHODS[0]}.`;
-  const why = `The bound can be made by ${listed(UPPER_METHODS, 'or')}.`;
+  const near = nearest(text, upperMethods);
+  const mend = near.length > 0 ? `Did you mean ${listed(near, 'or')}?` : `Write --upper ${upperMethods[0]}.`;
+  const why = `The bound can be made by ${listed(upperMethods, 'or')}.`;
   return wrong(`--upper ${text} is no method.`, why, mend, { text });
 }

@@ -1,6 +1,5 @@
 import { Argument, Command, CommanderError } from 'commander';
-import { version } from '../index.js';
-import { UPPER_METHODS } from './arguments.js';
+import { upperMethods, version } from '../index.js';
 import { type CheckFlags, checkCommand } from './check-command.js';
 import { fromCommander } from './command-line-mistake.js';
 import { exitCodes } from './exit-codes.js';
@@ -55,7 +54,7 @@ function build(finish: (exitCode: number) => void): Command {
   scenarioCommand(program, 'value', 'value a scenario: a lower bound, an upper bound and a 95% bracket')
     .option('--budget <TIME>', 'plan the run for about this long: 30s, 2m or 1h')
     .option('--plan <RECORD>', 'replay the counts of an earlier run, from its record')
-    .option('--upper <METHOD>', `how the martingale bound is made: ${UPPER_METHODS.join(', ')}`)
+    .option('--upper <METHOD>', `how the martingale bound is made: ${upperMethods.join(', ')}`)
     .option('--workers <COUNT>', 'threads to use; the result does not depend on it')
     .option('--run-dir <FOLDER>', 'keep the record of the run in this folder')
     .option('--strict', 'end with exit code 5 if advice was raised')

@@ -1,6 +1,7 @@
-import { countsBeforePilot, judgeCounts } from './counts.js';
+import { countsBeforePilot } from './counts.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
 import { forecastOf } from './forecast.js';
+import { judgeCounts } from './judge-counts.js';
 import type { CheckOutcome, Overrides } from './options.js';
 import { prepare } from './prepare.js';
 

@@ -1,5 +1,5 @@
 import { quantileSorted } from 'simple-statistics';
-import { type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
+import { asHeld, type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
 import type { NestedSums } from '../bounds/nested-paths.js';
 import type { OuterSums } from '../bounds/outer-sums.js';
 import { estimateFrom, estimateOf, jointError } from '../numeric/estimate.js';
@@ -16,6 +16,7 @@ import type {
 import type { StepFit } from '../rule/backward-induction.js';
 import type { Programs } from '../rule/programs.js';
 import type { CheckedScenario } from '../scenario/model.js';
+import { wantedWidthOf } from './wanted-width.js';
 
 /** Everything that a finished run measured. */
 export interface RunFindings {
@@ -54,7 +55,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   const dates = dateFindings(findings);
   const gap = gapOf(findings, chosen.method);
   const basisIsAutomatic = model.method.basis === 'auto';
-  const wantedWidth = wantedWidthOf(findings);
+  const wantedWidth = widthAskedFor(findings);
   const judgement = judge({
     plan,
     columnCount: programs.columns.length,
@@ -84,8 +85,8 @@ export function makeRecord(findings: RunFindings): RunRecord {
     gap,
     bracket95,
     crossChecks: {
-      plainLower: signed(estimateOf(outer.plain), sign),
-      nestedContinuationToday: nested === null ? null : signed(estimateOf(nested.continuationToday), sign),
+      plainLower: asHeld(outer.plain, sign),
+      nestedContinuationToday: nested === null ? null : asHeld(nested.continuationToday, sign),
     },
     stepBias: null,
     exact: null,
@@ -99,11 +100,6 @@ export function makeRecord(findings: RunFindings): RunRecord {
     timing: findings.timing,
     versions: findings.versions,
   };
-}
-
-/** An estimate in the decider's sign as the holder sees it. */
-function signed(estimate: Estimate, sign: 1 | -1): Estimate {
-  return { ...estimate, value: sign * estimate.value };
 }
 
 /** Gap of the bracket's own two bounds: path by path where both stand on the same paths. */
@@ -151,11 +147,9 @@ function exerciseTimeQuantiles(outer: OuterSums, { times }: Programs): RunRecord
 }
 
 /** The width that was asked for, in money; null when fixed counts or a budget were asked for instead. */
-function wantedWidthOf({ scenario, pilot, outer, programs }: RunFindings): number | null {
-  const { bracketWidth, outerPathCount, innerPointCount } = scenario.model.method;
+function widthAskedFor({ scenario, pilot, outer }: RunFindings): number | null {
+  const { method } = scenario.model;
   if (pilot !== null) return pilot.wantedWidth;
-  if (outerPathCount !== null || innerPointCount !== null) return null;
-  return 'money' in bracketWidth
-    ? bracketWidth.money
-    : bracketWidth.relative * Math.abs(programs.sign * outer.lower.mean);
+  if (method.outerPathCount !== null || method.innerPointCount !== null) return null;
+  return wantedWidthOf(method, outer.lower.mean);
 }

@@ -8,13 +8,14 @@ import {
 } from '../bounds/plan.js';
 import type { PilotFinding, Plan } from '../result/record.js';
 import type { Programs } from '../rule/programs.js';
-import type { CheckedScenario, Method } from '../scenario/model.js';
+import type { CheckedScenario } from '../scenario/model.js';
 import type { Executor } from '../workers/executor.js';
 import { runOuter } from './bounds-stage.js';
 import { countsBeforePilot } from './counts.js';
 import type { Environment } from './environment.js';
 import type { Progress, ValueOptions } from './options.js';
 import { Stopped } from './parcels.js';
+import { wantedWidthOf } from './wanted-width.js';
 
 /** A plan with what it was made from. */
 export interface Planned {
@@ -82,8 +83,4 @@ export async function choosePlan(
       wantedWidth: budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
     },
   };
-}
-
-function wantedWidthOf({ bracketWidth }: Method, value: number): number {
-  return 'money' in bracketWidth ? bracketWidth.money : bracketWidth.relative * Math.abs(value);
 }

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { betweenPoints, expression, oneOf, table, text, yesNo } from './grammar-leaves.js';
+import { upperMethods } from './upper-methods.js';
 
 const group = { error: 'a group of keys' };
 
@@ -136,9 +137,9 @@ export const method = z.strictObject(
     upper: z
       .union(
         [
-          oneOf('one-step', 'andersen-broadie', 'regressed'),
+          oneOf(...upperMethods),
           z.strictObject({
-            method: oneOf('one-step', 'andersen-broadie', 'regressed').optional(),
+            method: oneOf(...upperMethods).optional(),
             outer: expression.optional(),
             inner: expression.optional(),
           }),

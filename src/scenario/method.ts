@@ -5,8 +5,8 @@ import type { Method, UpperMethod } from './model.js';
 import { echo, readExpression, readNumber } from './read-expression.js';
 import { type Reading, stateScope } from './reading.js';
 import { entryOf, itemsOf, type TreeNode, under } from './tree.js';
+import { upperMethods } from './upper-methods.js';
 
-const upperMethods: readonly UpperMethod[] = ['one-step', 'andersen-broadie', 'regressed'];
 const mostPaths = 100_000_000;
 /** One path has no standard error. */
 const fewestOuterPaths = 2;

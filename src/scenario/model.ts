@@ -1,5 +1,8 @@
 import type { Contract } from '../clauses/contract.js';
 import type { PlacedExpression } from '../program/expression.js';
+import type { UpperMethod } from './upper-methods.js';
+
+export type { UpperMethod } from './upper-methods.js';
 
 /** A named number of the scenario. */
 export interface Constant {
@@ -28,9 +31,6 @@ export interface DriverFamily {
 
 /** The laws that can be simulated. */
 export type LawName = 'lognormal' | 'normal';
-
-/** The ways to the martingale bound of the bracket. */
-export type UpperMethod = 'one-step' | 'andersen-broadie' | 'regressed';
 
 /** How the bracket is to be made. Counts that are null are left to the pilot. */
 export interface Method {

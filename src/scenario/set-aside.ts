@@ -13,6 +13,9 @@ export interface Remainder {
   readonly names: ReadonlySet<string>;
 }
 
+/** Sections whose keys are names that expressions use. */
+const declaring: ReadonlySet<PropertyKey> = new Set(['constants', 'drivers']);
+
 /** Rounds of taking out; each can bring up a key that is missing now, with which a whole driver goes. */
 const mostRounds = 4;
 
@@ -35,7 +38,7 @@ export function setFaultsAside(root: MapNode): Remainder | null {
       }
       const path = removable(issue.path);
       if (path === null) return null;
-      if (path.length === 2 && typeof path[1] === 'string') names.add(path[1]);
+      if (path.length === 2 && declaring.has(path[0]!)) names.add(String(path[1]));
       current = without(current, path);
     }
   }
@@ -48,7 +51,7 @@ export function setFaultsAside(root: MapNode): Remainder | null {
  */
 function removable(path: Path): Path | null {
   const [section, name] = path;
-  if ((section === 'constants' || section === 'drivers') && name !== undefined) return [section, name];
+  if (section !== undefined && declaring.has(section) && name !== undefined) return [section, name];
   if (section === 'contract' && name === 'at expiry') return null;
   const firstItem = path.findIndex((step) => typeof step === 'number');
   const keys = firstItem < 0 ? path : path.slice(0, firstItem);

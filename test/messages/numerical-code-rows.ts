@@ -7,18 +7,10 @@ import { checkScenario } from '#built/run/check.js';
 import { thisMachine } from '#built/workers/machine.js';
 import { recordOf } from '../run-value.js';
 import { lots } from '../scenario-texts.js';
+import { smallPlan } from '../small-plan.js';
 import type { CodeRow } from './scenario-code-rows.js';
 
 const small = 'counts: { fit: 3000, outer: 512, inner: 8 }';
-const plan: Plan = {
-  fitPathCount: 3000,
-  outerPathCount: 512,
-  innerPointCount: 8,
-  nestedOuterPathCount: 0,
-  nestedInnerPathCount: 0,
-  upper: 'one-step',
-};
-
 const adviceOf = async (method: string[]): Promise<readonly Message[]> => (await recordOf(lots({ method }))).advice;
 
 async function refusal(text: string, changed: { plan?: Plan } = {}): Promise<readonly Message[]> {
@@ -30,7 +22,7 @@ async function refusal(text: string, changed: { plan?: Plan } = {}): Promise<rea
 function crossed(): readonly Message[] {
   const bound = (mean: number) => ({ value: mean, standardError: 0.01, halfWidth95: 0.0196, pathCount: 1000 });
   return judge({
-    plan,
+    plan: smallPlan,
     columnCount: 10,
     basisIsAutomatic: true,
     dates: [],
@@ -56,7 +48,7 @@ export const numericalCodeRows: readonly CodeRow[] = [
   ['not-finite', () => refusal(lots({ payoff: 'max(0, log(largest(lot) - 100))', method: [small] }))],
   ['memory-beyond-machine', tooSmall],
   ['fewer-paths-than-columns', () => refusal(lots({ method: ['counts: { fit: 20 }'] }))],
-  ['plan-does-not-fit', () => refusal(lots(), { plan: { ...plan, outerPathCount: 0.5 } })],
+  ['plan-does-not-fit', () => refusal(lots(), { plan: { ...smallPlan, outerPathCount: 0.5 } })],
   ['defect', () => [defectMessage(new Error('a column has no meaning'))]],
   ['thin-fit', () => adviceOf(['counts: { fit: 1000, outer: 512, inner: 8 }'])],
   ['rank-loss', () => adviceOf([small, 'basis: [largest(lot), 2 * largest(lot)]'])],

@@ -2,6 +2,7 @@ import { expect, test } from 'vitest';
 import { value } from '#built/index.js';
 import { recordOf } from '../run-value.js';
 import { lots } from '../scenario-texts.js';
+import { smallPlan } from '../small-plan.js';
 
 const small = ['counts: { fit: 4000, outer: 1024, inner: 8 }'];
 
@@ -210,15 +211,7 @@ test('seeds that differ beyond Latin letters give different paths', async () => 
 test.each([[{ outerPathCount: 1 }], [{ upper: 'best' }], [{ upper: 'andersen-broadie', nestedOuterPathCount: 0 }]])(
   'a plan with %j is refused',
   async (change) => {
-    const plan = {
-      fitPathCount: 3000,
-      outerPathCount: 512,
-      innerPointCount: 8,
-      nestedOuterPathCount: 0,
-      nestedInnerPathCount: 0,
-      upper: 'one-step',
-      ...change,
-    } as never;
+    const plan = { ...smallPlan, ...change } as never;
     const outcome = await value(lots(), { workers: 0, plan });
     expect(outcome.kind === 'refused' && outcome.messages[0]!.code).toBe('plan-does-not-fit');
   },

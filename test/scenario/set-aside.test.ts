@@ -50,3 +50,15 @@ test('what is set aside is never valued', () => {
   expect(scenario).toBeNull();
   expect(messages).toHaveLength(1);
 });
+
+test('a fault of the method silences nothing about drivers and correlation', () => {
+  const text = [
+    ...drivers,
+    'correlation:',
+    '  - { between: [lot, oat], value: 0.1 }',
+    ...contract.map((line) => line.replace(' + wrong', '')),
+    'method:',
+    '  basis: { lot: 1 }',
+  ].join('\n');
+  expect(codesOf(text)).toEqual(['4 unknown-name', '11 wrong-type']);
+});

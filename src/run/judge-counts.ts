@@ -1,0 +1,67 @@
+import { mistake } from '../messages/build.js';
+import { memory } from '../messages/figures.js';
+import type { Message } from '../messages/message.js';
+import type { Forecast, Plan } from '../result/record.js';
+import type { Programs } from '../rule/programs.js';
+import { upperMethods } from '../scenario/upper-methods.js';
+import type { ForecastCounts } from './forecast.js';
+
+/** Mistakes that show only once the counts meet the machine and the basis. */
+export function judgeCounts(programs: Programs, counts: ForecastCounts, forecast: Forecast): Message[] {
+  const messages: Message[] = [];
+  const columnCount = programs.columns.length;
+  if (counts.fitPathCount < columnCount) {
+    messages.push(
+      mistake('fewer-paths-than-columns', {
+        what: `The fit has ${counts.fitPathCount} paths for ${columnCount} columns.`,
+        why: 'A regression with fewer paths than columns fits anything and tells nothing.',
+        mend: `Set \`counts: { fit: … }\` under method to at least ${100 * columnCount}, or leave it out.`,
+        evidence: { fitPathCount: counts.fitPathCount, columnCount },
+      }),
+    );
+  }
+  const { peakMemoryBytes, machineMemoryBytes } = forecast;
+  if (machineMemoryBytes !== null && peakMemoryBytes > machineMemoryBytes) {
+    messages.push(
+      mistake('memory-beyond-machine', {
+        what: `The run needs about ${memory(peakMemoryBytes)} of memory; the machine has ${memory(machineMemoryBytes)}.`,
+        why: 'The paths of the fit are kept in memory; with less, the machine would stall or stop the run.',
+        mend: 'Lower `counts: { fit: … }` under method, or state fewer decision dates or drivers.',
+        evidence: { peakMemoryBytes, machineMemoryBytes },
+      }),
+    );
+  }
+  return messages;
+}
+
+/** Mistakes of a plan that was handed in to be replayed: what no run can have had. */
+export function judgePlan(plan: Plan): Message[] {
+  const { upper } = plan;
+  if (!upperMethods.includes(upper)) {
+    const what = `The plan's upper bound is ${JSON.stringify(upper)}; it must be ${upperMethods.join(', ')}.`;
+    return [impossible(what, { upper })];
+  }
+  const isNested = upper === 'andersen-broadie';
+  const least = [
+    ['fitPathCount', 1],
+    ['outerPathCount', 2],
+    ['innerPointCount', 1],
+    ['nestedOuterPathCount', isNested ? 2 : 0],
+    ['nestedInnerPathCount', isNested ? 1 : 0],
+  ] as const;
+  return least
+    .filter(([name, fewest]) => !(Number.isSafeInteger(plan[name]) && plan[name] >= fewest))
+    .map(([name, fewest]) => {
+      const what = `The plan's ${name} is ${String(plan[name])}; it must be a whole number from ${fewest} up.`;
+      return impossible(what, { name, fewest });
+    });
+}
+
+function impossible(what: string, evidence: Message['evidence']): Message {
+  return mistake('plan-does-not-fit', {
+    what,
+    why: 'A plan replays the counts of an earlier run of this program; no run can have had this one.',
+    mend: 'Take the `plan` of a record as it is, or leave the plan out.',
+    evidence,
+  });
+}
