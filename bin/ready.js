@@ -49,6 +49,7 @@ if (!isCurrent(buildStamp, wantedBuild)) {
   rmSync(join(root, 'dist'), { recursive: true, force: true });
   mkdirSync(join(root, 'dist/program'), { recursive: true });
   run(['npx', 'peggy', '--format', 'es', '--output', 'src/program/grammar.js', 'src/program/grammar.peggy']);
+  run(['npx', 'asc', '--config', 'src/program/kernels/asconfig.json', '--outFile', 'dist/program/kernels.wasm']);
   run(['npx', 'tsc', '--project', 'tsconfig.json']);
   copyFileSync(join(root, 'src/program/grammar.js'), join(root, 'dist/program/grammar.js'));
   writeFileSync(buildStamp, wantedBuild);

@@ -1,4 +1,5 @@
 import type { Moments } from '#built/numeric/moments.js';
+import { normalQuantile } from '#built/program/elementary.js';
 
 /** Distance of a mean from a value in standard errors. */
 export function standardisedError(moments: Moments, expected: number): number {
@@ -11,3 +12,19 @@ export function standardisedError(moments: Moments, expected: number): number {
  * with a fresh seed once in 3,000 checks (normal law, two-sided).
  */
 export const limit = 3.6;
+
+/** Size that the largest of some independent standard normals exceeds once in a thousand (two-sided). */
+export function largestLimit(count: number): number {
+  return normalQuantile(1 - 0.0005 / count);
+}
+
+/**
+ * The band that holds the mean square of some independent standard normals 999 times in a thousand.
+ *
+ * @source the cube root of a chi-square as a normal: Wilson & Hilferty (1931), PNAS 17, 684-688
+ */
+export function meanSquareBand(count: number): { low: number; high: number } {
+  const spread = 2 / (9 * count);
+  const cube = (sign: number) => (1 - spread + sign * normalQuantile(0.9995) * Math.sqrt(spread)) ** 3;
+  return { low: cube(-1), high: cube(1) };
+}

@@ -1,13 +1,20 @@
-import { type Moments, mergeMoments, momentsOf, noMoments } from '../numeric/moments.js';
+import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-sweeps.js';
 import type { Rule } from '../rule/rule.js';
+import type { NestedPrograms } from './nested-programs.js';
 
 /** Sums over the outer paths of the nested upper bound, in the decider's sign. */
 export interface NestedSums {
   readonly upper: Moments;
   /** What continuing with the rule is worth today, by the inner paths from today. */
   readonly continuationToday: Moments;
+}
+
+/** What nested paths are asked for. */
+export interface NestedWork {
+  readonly pathCount: number;
+  readonly innerPathCount: number;
 }
 
 /** The sums of no paths. */
@@ -37,113 +44,100 @@ export function mergeNestedSums(a: NestedSums, b: NestedSums): NestedSums {
  */
 export function runNestedPaths(
   block: Block,
+  nested: NestedPrograms,
   rule: Rule,
-  pathCount: number,
-  innerPathCount: number,
+  { pathCount, innerPathCount }: NestedWork,
   range: BlockRange,
 ): NestedSums {
   let total = noNestedSums;
   forEachBlock(block, range, pathCount, (index, firstPath) => {
-    total = mergeNestedSums(total, runBlock(block, rule, innerPathCount, index, firstPath));
+    total = mergeNestedSums(total, runBlock(block, nested, rule, innerPathCount, { index, firstPath }));
   });
   return total;
 }
 
-function runBlock(block: Block, rule: Rule, innerPathCount: number, index: number, firstPath: number): NestedSums {
-  const { layout, times, todayIsDecisionDate } = block.programs;
-  const { lanes } = block;
-  const last = times.length - 1;
-  const saved = layout.stage;
-  const hold = saved + block.driverCount;
+interface BlockPlace {
+  readonly index: number;
+  readonly firstPath: number;
+}
 
-  const martingale = new Float64Array(lanes);
-  const upper = new Float64Array(lanes).fill(-Infinity);
-  let continuationNow = new Float64Array(lanes);
+function runBlock(
+  block: Block,
+  nested: NestedPrograms,
+  rule: Rule,
+  innerPathCount: number,
+  place: BlockPlace,
+): NestedSums {
+  const { layout, times, todayIsDecisionDate } = block.programs;
+  const { interpreter, driverCount, lanes } = block;
+  const { columns } = nested;
+  const { index, firstPath } = place;
+  const last = times.length - 1;
   let today = noMoments;
 
+  block.column(columns.martingale).fill(0);
+  block.column(columns.upper).fill(Number.NEGATIVE_INFINITY);
   block.restart();
   for (let date = 0; date <= last; date++) {
+    const isDecisionDate = date > 0 || todayIsDecisionDate;
     block.evaluate(date, rule, firstPath);
-    block.interpreter.copy(layout.next, saved, block.driverCount);
-    const payoff = Float64Array.from(block.column(date === last ? layout.terminal : layout.payoff));
-    const exercises = new Uint8Array(lanes);
-    if (date === last) exercises.fill(1);
-    else if (date > 0 || todayIsDecisionDate) {
-      block.continuation(date, rule, hold, firstPath);
-      const continuation = block.column(hold);
-      for (let lane = 0; lane < lanes; lane++) exercises[lane] = payoff[lane]! > continuation[lane]! ? 1 : 0;
+    interpreter.copy(date === last ? layout.terminal : layout.payoff, columns.amount, 1);
+    interpreter.copy(layout.next, columns.drivers, driverCount);
+    if (date === last) {
+      block.column(columns.exercises).fill(1);
+      interpreter.copy(columns.amount, columns.continuation, 1);
+    } else {
+      if (isDecisionDate) {
+        block.value(date, rule, firstPath);
+        block.run(nested.decide);
+      } else block.column(columns.exercises).fill(0);
+      estimateContinuation(block, nested, rule, innerPathCount, { ...place, date });
     }
-    const continuationNext =
-      date === last ? payoff : continuationValues(block, rule, innerPathCount, { index, firstPath, date, saved, hold });
-    if (date === 0) today = momentsOf(continuationNext, 0, lanes);
-    for (let lane = 0; lane < lanes; lane++) {
-      if (date > 0) {
-        const worth = exercises[lane] === 1 ? payoff[lane]! : continuationNext[lane]!;
-        martingale[lane] = martingale[lane]! + worth - continuationNow[lane]!;
-      }
-      if (date > 0 || todayIsDecisionDate) upper[lane] = Math.max(upper[lane]!, payoff[lane]! - martingale[lane]!);
-    }
-    continuationNow = continuationNext;
+    if (date === 0) today = interpreter.moments(columns.continuation, lanes);
+    else block.run(nested.move);
+    if (isDecisionDate) block.run(nested.note);
+    interpreter.copy(columns.continuation, columns.continuationBefore, 1);
     if (date < last) {
-      block.interpreter.copy(saved, layout.next, block.driverCount);
-      block.advance();
+      interpreter.copy(columns.drivers, layout.state, driverCount);
       block.draw('nested outer', index, date, 0);
       block.step(date, firstPath);
     }
   }
-  return { upper: momentsOf(upper, 0, lanes), continuationToday: today };
+  return { upper: interpreter.moments(columns.upper, lanes), continuationToday: today };
 }
 
-interface NestedPlace {
-  readonly index: number;
-  readonly firstPath: number;
-  readonly date: number;
-  /** Columns with the drivers at the date. */
-  readonly saved: number;
-  /** First of the columns that may be used. */
-  readonly hold: number;
-}
-
-/** Worth of continuing with the rule from the saved drivers, by inner paths; overwrites everything but `saved`. */
-function continuationValues(
+/** Writes the worth of continuing with the rule from the saved drivers, by inner paths; overwrites `next` and the basis. */
+function estimateContinuation(
   block: Block,
+  nested: NestedPrograms,
   rule: Rule,
   innerPathCount: number,
-  place: NestedPlace,
-): Float64Array<ArrayBuffer> {
+  { index, firstPath, date: start }: BlockPlace & { readonly date: number },
+): void {
   const { layout, times } = block.programs;
-  const { lanes } = block;
+  const { interpreter, driverCount, lanes } = block;
+  const { columns } = nested;
   const last = times.length - 1;
-  const increments = place.hold + 1;
-  const total = new Float64Array(lanes);
-  const running = new Uint8Array(lanes);
+  block.column(columns.continuation).fill(0);
   for (let path = 0; path < innerPathCount; path++) {
-    let runningCount = lanes;
-    running.fill(1);
-    block.column(increments).fill(0);
-    block.interpreter.copy(place.saved, layout.next, block.driverCount);
-    block.evaluate(place.date, rule, place.firstPath);
-    for (let date = place.date; runningCount > 0; date++) {
+    block.column(columns.running).fill(1);
+    block.column(columns.increments).fill(0);
+    interpreter.copy(columns.drivers, layout.next, driverCount);
+    block.evaluate(start, rule, firstPath);
+    for (let date = start; date < last && interpreter.sum(columns.running, lanes) > 0; date++) {
       const arrives = date + 1;
-      block.ruleIntegrands(date, rule, layout.integrands);
+      block.ruleIntegrands(date, rule);
       block.advance();
-      block.draw('nested inner', place.index, place.date * times.length + date, path);
+      block.draw('nested inner', index, start * times.length + date, path);
       block.polynomials();
-      block.addIncrement(layout.integrands, 1, increments);
-      block.step(date, place.firstPath);
-      block.evaluate(arrives, rule, place.firstPath);
-      if (arrives < last) block.continuation(arrives, rule, place.hold, place.firstPath);
-      const brings = block.column(arrives === last ? layout.terminal : layout.payoff);
-      const continuation = block.column(place.hold);
-      const increment = block.column(increments);
-      for (let lane = 0; lane < lanes; lane++) {
-        if (running[lane] === 1 && (arrives === last || brings[lane]! > continuation[lane]!)) {
-          total[lane] = total[lane]! + brings[lane]! - increment[lane]!;
-          running[lane] = 0;
-          runningCount--;
-        }
-      }
+      block.addIncrement(1, columns.increments);
+      block.step(date, firstPath);
+      block.evaluate(arrives, rule, firstPath);
+      if (arrives < last) block.value(arrives, rule, firstPath);
+      block.run(arrives === last ? nested.endInnerLast : nested.endInner);
     }
   }
-  return total.map((sum) => sum / innerPathCount);
+  const { uniforms } = block.loaded(nested.average);
+  uniforms[0] = 1 / innerPathCount;
+  block.run(nested.average);
 }

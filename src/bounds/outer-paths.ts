@@ -1,11 +1,20 @@
+import { noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-sweeps.js';
 import type { Rule } from '../rule/rule.js';
-import { type Choice, type InnerMeans, OuterLanes } from './outer-lanes.js';
+import { moveUniforms, type OuterKind, type OuterPrograms } from './outer-programs.js';
 import { mergeOuterSums, noOuterSums, type OuterSums } from './outer-sums.js';
 
 /** Which draws a set of outer paths uses. */
 export type OuterPurpose = 'outer' | 'pilot';
+
+/** What a set of outer paths is asked for. */
+export interface OuterWork {
+  readonly purpose: OuterPurpose;
+  readonly pathCount: number;
+  /** Points of one step at every path and date; with none, the regressed martingale stands for the one-step one. */
+  readonly innerPointCount: number;
+}
 
 /**
  * Both bounds on one set of outer paths, with the one-step martingale of the fitted value.
@@ -18,109 +27,133 @@ export type OuterPurpose = 'outer' | 'pilot';
  *   the state, so its mean is the value of the rule: biased low for the best value by what the rule misses, only.
  * - upper: mean of the largest payoff less martingale. Noise inside a maximum can only raise its mean: biased high.
  *
+ * Without inner points the regressed martingale, exact whatever its coefficients, serves both.
+ *
  * @source Haugh & Kogan (2004), Operations Research 52, 258-270; Rogers (2002), Mathematical Finance 12, 271-286
  * @cost outer paths × dates × (inner points + 1) steps and evaluations
  */
 export function runOuterPaths(
   block: Block,
+  outer: OuterPrograms,
   rule: Rule,
-  purpose: OuterPurpose,
-  pathCount: number,
-  innerPointCount: number,
+  work: OuterWork,
   range: BlockRange,
 ): OuterSums {
   let total = noOuterSums(block.programs.times.length);
-  forEachBlock(block, range, pathCount, (index, firstPath) => {
-    total = mergeOuterSums(total, runBlock(block, rule, purpose, innerPointCount, index, firstPath));
+  forEachBlock(block, range, work.pathCount, (index, firstPath) => {
+    total = mergeOuterSums(total, runBlock(block, outer, rule, work, index, firstPath));
   });
   return total;
 }
 
 function runBlock(
   block: Block,
+  outer: OuterPrograms,
   rule: Rule,
-  purpose: OuterPurpose,
-  innerPointCount: number,
+  work: OuterWork,
   index: number,
   firstPath: number,
 ): OuterSums {
-  const { layout, times, polynomialNames, todayIsDecisionDate } = block.programs;
-  const { lanes } = block;
+  const { times, todayIsDecisionDate } = block.programs;
+  const { purpose, innerPointCount } = work;
+  const kind: OuterKind = innerPointCount > 0 ? 'one-step' : 'regressed';
   const last = times.length - 1;
-  const savedNext = layout.stage;
-  const nextIntegrands = savedNext + block.driverCount;
-  const hold = nextIntegrands + polynomialNames.length;
-  const [outerValue, innerValue, regressedStep] = [hold + 1, hold + 2, hold + 3];
-  const paths = new OuterLanes(block.programs, lanes);
+  const exerciseCounts = times.map(() => 0);
+  const chooseAt = (date: number) => {
+    block.run(date === last ? outer.chooseLast[kind] : outer.choose[kind]);
+    exerciseCounts[date] = block.interpreter.sum(outer.columns.exercised, block.lanes);
+  };
 
-  const choiceAt = (date: number): Choice => ({
-    date,
-    brings: block.column(date === last ? layout.terminal : layout.payoff).slice(),
-    payoff: block.column(layout.payoff).slice(),
-    continuation: block.column(hold).slice(),
-  });
-
+  openPaths(block, outer);
   block.restart();
   block.evaluate(0, rule, firstPath);
-  block.continuation(0, rule, hold, firstPath);
-  if (todayIsDecisionDate) paths.choose(choiceAt(0));
-  block.ruleIntegrands(0, rule, layout.integrands);
+  block.value(0, rule, firstPath);
+  if (todayIsDecisionDate) chooseAt(0);
   for (let date = 0; date < last; date++) {
     const arrives = date + 1;
+    block.ruleIntegrands(date, rule);
     block.advance();
+    if (innerPointCount > 0) sumInnerPoints(block, outer, rule, work, { index, firstPath, date });
     block.draw(purpose, index, date, 0);
     block.polynomials();
-    block.column(regressedStep).fill(0);
-    block.addIncrement(layout.integrands, 1, regressedStep);
+    block.column(outer.columns.regressedStep).fill(0);
+    block.addIncrement(1, outer.columns.regressedStep);
     block.step(date, firstPath);
     block.evaluate(arrives, rule, firstPath);
-    block.value(arrives, rule, hold, outerValue, firstPath);
-    if (arrives < last) block.ruleIntegrands(arrives, rule, nextIntegrands);
-    const choice = choiceAt(arrives);
-    block.interpreter.copy(layout.next, savedNext, block.driverCount);
-
-    const place = { index, firstPath, date, value: innerValue, hold };
-    const means = innerMeans(block, rule, purpose === 'outer' ? 'inner' : 'pilot inner', innerPointCount, place);
-    paths.move(block.column(outerValue), means, block.column(regressedStep));
-    paths.choose(choice);
-    block.interpreter.copy(savedNext, layout.next, block.driverCount);
-    block.interpreter.copy(nextIntegrands, layout.integrands, polynomialNames.length);
+    block.value(arrives, rule, firstPath);
+    block.run(outer.move[kind]);
+    chooseAt(arrives);
   }
-  return paths.sums();
+  return sumPaths(block, outer, kind, exerciseCounts);
+}
+
+/** Puts the lanes of a block at the start: nothing taken off, nothing brought, all running. */
+function openPaths(block: Block, { columns }: OuterPrograms): void {
+  const { regressed, martingale, halfMartingale, lower, plain, upper, halfUpper, regressedUpper, running } = columns;
+  for (const column of [regressed, martingale, halfMartingale, lower, plain]) block.column(column).fill(0);
+  for (const column of [upper, halfUpper, regressedUpper]) block.column(column).fill(Number.NEGATIVE_INFINITY);
+  block.column(running).fill(1);
 }
 
 interface InnerPlace {
   readonly index: number;
   readonly firstPath: number;
   readonly date: number;
-  readonly value: number;
-  readonly hold: number;
 }
 
 /**
- * Mean of the fitted value after one step from `state`, over inner points that are fresh for each lane: over all of
- * them and over the first half. Leaves `next` and the basis overwritten.
+ * Sums the fitted value after one step from `state`, less the regressed increment, over inner points that are fresh for
+ * each lane: over all of them and over the first half. Leaves `next` and the basis overwritten.
  */
-function innerMeans(
+function sumInnerPoints(
   block: Block,
+  { columns, addInner, move }: OuterPrograms,
   rule: Rule,
-  purpose: 'inner' | 'pilot inner',
-  pointCount: number,
-  place: InnerPlace,
-): InnerMeans {
-  const sum = new Float64Array(block.lanes);
-  const half = Math.ceil(pointCount / 2);
-  let halfMean = sum;
-  for (let point = 0; point < pointCount; point++) {
-    block.draw(purpose, place.index, place.date, point);
+  { purpose, innerPointCount }: OuterWork,
+  { index, firstPath, date }: InnerPlace,
+): void {
+  const { layout } = block.programs;
+  const half = Math.ceil(innerPointCount / 2);
+  block.column(columns.innerSum).fill(0);
+  for (let point = 0; point < innerPointCount; point++) {
+    block.draw(purpose === 'outer' ? 'inner' : 'pilot inner', index, date, point);
     block.polynomials();
-    block.step(place.date, place.firstPath);
-    block.evaluate(place.date + 1, rule, place.firstPath);
-    block.value(place.date + 1, rule, place.hold, place.value, place.firstPath);
-    block.addIncrement(block.programs.layout.integrands, -1, place.value);
-    const value = block.column(place.value);
-    for (let lane = 0; lane < block.lanes; lane++) sum[lane] = sum[lane]! + value[lane]!;
-    if (point + 1 === half) halfMean = sum.map((total) => total / half);
+    block.step(date, firstPath);
+    block.evaluate(date + 1, rule, firstPath);
+    block.value(date + 1, rule, firstPath);
+    block.addIncrement(-1, layout.value);
+    block.run(addInner);
+    if (point + 1 === half) block.interpreter.copy(columns.innerSum, columns.innerHalfSum, 1);
   }
-  return { mean: sum.map((total) => total / pointCount), halfMean };
+  const { uniforms } = block.loaded(move['one-step']);
+  uniforms[moveUniforms.inversePoints] = 1 / innerPointCount;
+  uniforms[moveUniforms.inverseHalfPoints] = 1 / half;
+}
+
+function sumPaths(block: Block, outer: OuterPrograms, kind: OuterKind, exerciseCounts: number[]): OuterSums {
+  const { interpreter, lanes } = block;
+  const { columns } = outer;
+  const moments = (column: number) => interpreter.moments(column, lanes);
+  /** Moments of a maximum less what the rule brings; overwrites the maximum. */
+  const above = (column: number) => {
+    const values = block.column(column);
+    const lower = block.column(columns.lower);
+    for (let lane = 0; lane < lanes; lane++) values[lane] = values[lane]! - lower[lane]!;
+    return moments(column);
+  };
+  const regressed = moments(columns.regressedUpper);
+  const regressedGap = above(columns.regressedUpper);
+  const oneStep =
+    kind === 'regressed'
+      ? { upper: noMoments, halfInner: noMoments, gap: noMoments }
+      : { upper: moments(columns.upper), halfInner: moments(columns.halfUpper), gap: above(columns.upper) };
+  return {
+    lower: moments(columns.lower),
+    ...oneStep,
+    regressed,
+    regressedGap,
+    plain: moments(columns.plain),
+    exerciseCounts,
+    neverCount: interpreter.sum(columns.unused, lanes),
+  };
 }

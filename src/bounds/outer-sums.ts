@@ -7,7 +7,7 @@ import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
 export interface OuterSums {
   /** Payoff where the rule exercises, less the martingale there. */
   readonly lower: Moments;
-  /** Largest payoff less martingale on the path: at least `lower` on every path. */
+  /** Largest payoff less martingale on the path: at least `lower` on every path. Empty without inner points. */
   readonly upper: Moments;
   readonly gap: Moments;
   /** Regressed maximum less `lower`. */

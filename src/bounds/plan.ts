@@ -50,7 +50,7 @@ export interface Counts {
  */
 export function modelOfPilot(sums: OuterSums, innerPointCount: number, method: UpperMethod): PilotModel {
   const lowerStandardDeviation = Math.sqrt(varianceOf(sums.lower));
-  if (method === 'regressed') {
+  if (method === 'regressed' || innerPointCount === 0) {
     return {
       lowerStandardDeviation,
       upperStandardDeviation: Math.sqrt(varianceOf(sums.regressed)),
@@ -74,7 +74,11 @@ export function modelOfPilot(sums: OuterSums, innerPointCount: number, method: U
 /** Width of the bracket that counts are expected to give, in money. */
 export function expectedWidth(model: PilotModel, counts: Counts): number {
   const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
-  return model.limitGap + model.gapPerInnerShare / counts.innerPointCount + noise / Math.sqrt(counts.outerPathCount);
+  return expectedGap(model, counts.innerPointCount) + noise / Math.sqrt(counts.outerPathCount);
+}
+
+function expectedGap({ limitGap, gapPerInnerShare }: PilotModel, innerPointCount: number): number {
+  return gapPerInnerShare === 0 ? limitGap : limitGap + gapPerInnerShare / innerPointCount;
 }
 
 /** What a plan must keep to. */
@@ -120,7 +124,7 @@ export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
  * edge of what the gap allows, paths without end would gain next to nothing.
  */
 function outerPathsFor(model: PilotModel, innerPointCount: number, wantedWidth: number): number {
-  const gap = model.limitGap + model.gapPerInnerShare / innerPointCount;
+  const gap = expectedGap(model, innerPointCount);
   const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
   if (noise === 0) return smallestOuterPathCount;
   const room = Math.max(aim * wantedWidth - gap, gap / 8);

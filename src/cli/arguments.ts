@@ -1,9 +1,9 @@
-import { upperMethods } from '../index.js';
+import { interpreterKinds, upperMethods } from '../index.js';
 import { mistake } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
 import { nearest } from '../messages/nearest.js';
 import { listed } from '../messages/printable.js';
-import type { Overrides } from '../run/options.js';
+import type { InterpreterKind, Overrides } from '../run/options.js';
 
 /** A value read from the command line, or what is wrong with it. */
 export type Parsed<T> = { readonly value: T } | { readonly mistake: Message };
@@ -96,10 +96,26 @@ export function parseWorkers(text: string): Parsed<number> {
 
 /** Reads `--upper`: how the martingale bound is made. */
 export function parseUpper(text: string): Parsed<UpperMethod> {
-  const found = upperMethods.find((method) => method === text.trim());
-  if (found !== undefined) return { value: found };
-  const near = nearest(text, upperMethods);
-  const mend = near.length > 0 ? `Did you mean ${listed(near, 'or')}?` : `Write --upper ${upperMethods[0]}.`;
   const why = `The bound can be made by ${listed(upperMethods, 'or')}.`;
-  return wrong(`--upper ${text} is no method.`, why, mend, { text });
+  return oneOf('--upper', text, upperMethods, 'method', why);
+}
+
+/** Reads `--interpreter`: what runs the compiled programs. */
+export function parseInterpreter(text: string): Parsed<InterpreterKind> {
+  const why = 'Programs are run by `wasm`, the fast one, or by `plain`, slow and readable; both give the same bits.';
+  return oneOf('--interpreter', text, interpreterKinds, 'interpreter', why);
+}
+
+function oneOf<T extends string>(
+  option: string,
+  text: string,
+  choices: readonly T[],
+  noun: string,
+  why: string,
+): Parsed<T> {
+  const found = choices.find((choice) => choice === text.trim());
+  if (found !== undefined) return { value: found };
+  const near = nearest(text, choices);
+  const mend = near.length > 0 ? `Did you mean ${listed(near, 'or')}?` : `Write ${option} ${choices[0]}.`;
+  return wrong(`${option} ${text} is no ${noun}.`, why, mend, { text });
 }

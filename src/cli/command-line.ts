@@ -56,6 +56,7 @@ function build(finish: (exitCode: number) => void): Command {
     .option('--plan <RECORD>', 'replay the counts of an earlier run, from its record')
     .option('--upper <METHOD>', `how the martingale bound is made: ${upperMethods.join(', ')}`)
     .option('--workers <COUNT>', 'threads to use; the result does not depend on it')
+    .option('--interpreter <KIND>', 'wasm (default) or plain, slower and readable; the result does not depend on it')
     .option('--run-dir <FOLDER>', 'keep the record of the run in this folder')
     .option('--strict', 'end with exit code 5 if advice was raised')
     .action(async (file: string, flags: ValueFlags) => finish(await valueCommand(file, flags)));

@@ -5,7 +5,7 @@ import type { ValueOptions } from '../run/options.js';
 import { readPlan } from '../store/read-record.js';
 import { prepareRunDirectory } from '../store/record-file.js';
 import { textHash } from '../store/text-hash.js';
-import { parseBudget, parseWorkers } from './arguments.js';
+import { parseBudget, parseInterpreter, parseWorkers } from './arguments.js';
 import { exitCodes } from './exit-codes.js';
 import { type RawOverrides, readOverrides, taken } from './overrides.js';
 import { readScenario } from './scenario-source.js';
@@ -15,6 +15,7 @@ export interface ValueFlags extends RawOverrides {
   readonly budget?: string;
   readonly plan?: string;
   readonly workers?: string;
+  readonly interpreter?: string;
   readonly runDir?: string;
   readonly json?: boolean;
   readonly strict?: boolean;
@@ -57,6 +58,10 @@ export async function prepareValue(file: string, flags: ValueFlags): Promise<Pre
   const overrides = readOverrides(file, flags, mistakes);
   const budgetSeconds = taken(flags.budget === undefined ? undefined : parseBudget(flags.budget), mistakes);
   const workers = taken(flags.workers === undefined ? undefined : parseWorkers(flags.workers), mistakes);
+  const interpreter = taken(
+    flags.interpreter === undefined ? undefined : parseInterpreter(flags.interpreter),
+    mistakes,
+  );
   mistakes.push(...contradictions(flags));
   if (mistakes.length > 0) return { kind: 'refused', exitCode: exitCodes.usage, messages: mistakes };
 
@@ -74,6 +79,7 @@ export async function prepareValue(file: string, flags: ValueFlags): Promise<Pre
       ...overrides,
       ...(budgetSeconds === undefined ? {} : { budgetSeconds }),
       ...(workers === undefined ? {} : { workers }),
+      ...(interpreter === undefined ? {} : { interpreter }),
       ...(replay === null ? {} : { plan: replay.plan }),
     },
   };

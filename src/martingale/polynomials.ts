@@ -42,8 +42,9 @@ export function writePolynomials(
         graph,
         members.map((index) => states[index]!),
         draws,
+        Math.min(members.length, leadingRankCount),
       );
-      return sorted.slice(0, leadingRankCount).map((draw, rank) => ({
+      return sorted.map((draw, rank) => ({
         name: `${name} ranked ${rank + 1}`,
         draw,
         innovation: drivers[members[0]!]!.law.innovation,

@@ -25,7 +25,7 @@ export function buildStepProgram(model: CheckedModel, drivers: readonly Driver[]
   const columnsFrom = (first: number) => drivers.map((_, index) => graph.column(first + index));
   const next = writeStep(model, graph, drivers, columnsFrom(columns.state), columnsFrom(columns.innovations), duration);
   const outputs = next.map((node, index) => ({ node, column: columns.next + index }));
-  return compile(graph, outputs, stepUniforms.count, columns.scratch);
+  return compile(graph, outputs, stepUniforms.count, columns.scratch, 'step');
 }
 
 /** Writes the drivers after a step from nodes for the drivers before it, independent innovations and the duration. */

@@ -19,6 +19,16 @@ export function streamKey(seed: string, purpose: Purpose, innovationName: string
   return { low: generator.int32() >>> 0, high: generator.int32() >>> 0 };
 }
 
+/** The keys of several innovations. @shape innovations × 2: low half, high half */
+export function streamKeys(seed: string, purpose: Purpose, innovationNames: readonly string[]): Int32Array {
+  return Int32Array.from(
+    innovationNames.flatMap((name) => {
+      const { low, high } = streamKey(seed, purpose, name);
+      return [low, high];
+    }),
+  );
+}
+
 /** JSON in ASCII alone: the package looks at the low byte of each character only, so others must be spelled out. */
 function asciiText(parts: readonly string[]): string {
   return JSON.stringify(parts).replace(/[^ -~]/g, (character) => `\\u${character.charCodeAt(0).toString(16)}`);

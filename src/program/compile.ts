@@ -12,16 +12,19 @@ export interface Output {
  * Turns what the outputs need of a graph into a program.
  *
  * Values are computed in the order of the graph; a scratch column is used again as soon as its last reader has run, so
- * that a block stays in cache. An output that overwrites one of the program's own inputs is written at the very end.
+ * that a block stays in cache. An output over one of the program's own inputs is written once
+ * nobody reads that input any more.
  *
  * @param uniformInputCount how many uniform inputs the caller hands in at each run
  * @param scratchColumn the first column of the workspace that the program may use for itself
+ * @param name what the program computes, for profiles
  */
 export function compile(
   graph: Graph,
   outputs: readonly Output[],
   uniformInputCount: number,
   scratchColumn: number,
+  name = 'program',
 ): Program {
   const entries = graph.entries;
   const readerCount = new Map<Node, number>();
@@ -39,7 +42,7 @@ export function compile(
   const needed = [...readerCount.keys()].sort((a, b) => a - b);
 
   const scalars: number[] = new Array(uniformInputCount).fill(0);
-  const inputColumns = new Set<number>();
+  const inputColumns = new Map<number, Node>();
   const operandOf = new Map<Node, number>();
   const uniformCode: number[] = [];
   const laneCode: number[] = [];
@@ -50,7 +53,7 @@ export function compile(
   for (const node of needed) {
     const entry = entries[node]!;
     if (entry.kind === 'column') {
-      inputColumns.add(entry.column);
+      inputColumns.set(entry.column, node);
       columnCount = Math.max(columnCount, entry.column + 1);
     }
   }
@@ -58,9 +61,7 @@ export function compile(
   for (const { node, column } of outputs) {
     columnCount = Math.max(columnCount, column + 1);
     const entry = entries[node]!;
-    if (entry.kind === 'operation' && entry.level === 'lane' && !inputColumns.has(column) && !directColumn.has(node)) {
-      directColumn.set(node, column);
-    }
+    if (entry.kind === 'operation' && entry.level === 'lane' && !directColumn.has(node)) directColumn.set(node, column);
   }
 
   const release = (node: Node) => {
@@ -68,6 +69,12 @@ export function compile(
     readerCount.set(node, left);
     const operand = operandOf.get(node)!;
     if (left === 0 && operand >= scratchColumn && !outputColumns.has(operand)) freeColumns.push(operand);
+  };
+
+  /** Whether nobody will read what a column holds from outside. */
+  const isUnread = (column: number): boolean => {
+    const input = inputColumns.get(column);
+    return input === undefined || readerCount.get(input) === 0;
   };
 
   for (const node of needed) {
@@ -93,7 +100,8 @@ export function compile(
           scalars.push(0);
         } else {
           entry.operands.forEach(release);
-          const target = directColumn.get(node) ?? freeColumns.pop() ?? columnCount++;
+          const direct = directColumn.get(node);
+          const target = direct !== undefined && isUnread(direct) ? direct : (freeColumns.pop() ?? columnCount++);
           laneCode.push(code, target, a, b, c);
           operandOf.set(node, target);
         }
@@ -112,6 +120,7 @@ export function compile(
   }
   laneCode.push(...finalCopies);
   return {
+    name,
     scalars: Float64Array.from(scalars),
     uniformInputCount,
     uniformCode: Int32Array.from(uniformCode),

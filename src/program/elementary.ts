@@ -32,6 +32,9 @@ const { farNumerator4: f4, farNumerator5: f5, farNumerator6: f6, farNumerator7: 
 const { farDenominator1: g1, farDenominator2: g2, farDenominator3: g3, farDenominator4: g4 } = table;
 const { farDenominator5: g5, farDenominator6: g6, farDenominator7: g7 } = table;
 
+/** 1.5 · 2^52: added and taken off again it rounds to a whole number. */
+const rounder = 6755399441055744;
+
 /** 2^-1022, 2^54 and 2^27 + 1; the last cuts a double into two halves of 26 digits. */
 const smallestNormal = 2.2250738585072014e-308;
 const intoNormal = 18014398509481984;
@@ -57,7 +60,7 @@ const highWord = new Uint8Array(Uint32Array.of(1).buffer)[0] === 1 ? 1 : 0;
 function exponentialTimes(x: number, factor: number): number {
   if (Number.isNaN(x)) return x;
   const bounded = Math.min(Math.max(x, -746), 710);
-  const k = Math.floor(bounded * oneOverLogOfTwo + 0.5);
+  const k = bounded * oneOverLogOfTwo + rounder - rounder;
   const high = bounded - k * logOfTwoHigh;
   const low = k * logOfTwoLow;
   const r = high - low;
@@ -75,7 +78,7 @@ function exponentialTimes(x: number, factor: number): number {
  *
  * One reduction and one polynomial for all arguments, so that lanes side by side never part ways; results beyond the
  * range become Infinity, subnormals lose their digits gradually, NaN stays NaN.
- * @error below 1 unit in the last place (largest measured 0.88)
+ * @error below 1 unit in the last place (largest measured 0.91, next to an odd multiple of log(2) / 2)
  * @source Reduction in two parts: Cody & Waite (1980), Software Manual for the Elementary Functions, chapter 6.
  */
 export function exp(x: number): number {

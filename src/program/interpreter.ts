@@ -1,47 +1,81 @@
+import type { Moments } from '../numeric/moments.js';
 import type { Program } from './program.js';
-import type { StreamKey } from './stream.js';
 
 /** A program made ready for one interpreter. */
 export interface LoadedProgram {
+  readonly name: string;
   /** Uniform inputs, to be filled before each run. */
   readonly uniforms: Float64Array;
+}
+
+/** What an interpreter is made for: its memory is laid out once. */
+export interface Room {
+  readonly columnCount: number;
+  readonly programs: readonly Program[];
+  /** Most coefficients that one `combine`, sums that one `accumulate…`, or keys that one draw will bring. */
+  readonly numberCount: number;
 }
 
 /**
  * Runs programs and the kernels around them on a workspace of columns, one block at a time.
  *
- * Every method is defined to the last bit, reductions included: another interpreter must give the same bits. Sums over
- * lanes use four running sums, lane i going to sum i mod 4, and end as (s0 + s2) + (s1 + s3).
+ * Every method is defined to the last bit, so that another interpreter gives the same bits. A sum over lanes is two
+ * running sums, of the even and of the odd lanes, and ends as the first plus the second. Methods work on lanes
+ * 0 … lanes - 1; what they leave in the lanes of a target beyond those is not defined.
  */
 export interface Interpreter {
-  /** The workspace, column after column, each `blockLanes` long; filled by callers, changed by runs. */
+  /** The workspace: column c starts at c × `columnStride`; filled by callers, changed by runs. */
   readonly columns: Float64Array;
-  load(program: Program): LoadedProgram;
-  /** Runs on lanes 0 … lanes - 1; the other lanes keep what they held. */
+  /** The programs of the room, in its order. */
+  readonly programs: readonly LoadedProgram[];
   run(program: LoadedProgram, lanes: number): void;
   copy(fromColumn: number, toColumn: number, columnCount: number): void;
-  /** Fills a column with independent standard normals of the stream that the key and the three numbers name. */
-  drawNormals(key: StreamKey, block: number, date: number, replicate: number, column: number, lanes: number): void;
-  /** Writes Σ coefficient × column over `count` columns from `firstColumn`, in their order, into a column. */
+  /**
+   * Fills columns with independent standard normals; each is the stream that its key and the three numbers name.
+   *
+   * @param keys low and high half of each column's key. @shape columns × 2
+   */
+  drawNormals(
+    keys: Int32Array,
+    block: number,
+    date: number,
+    replicate: number,
+    firstColumn: number,
+    lanes: number,
+  ): void;
+  /**
+   * Writes Σ coefficient × column over `count` columns from `firstColumn`, in their order, to each target.
+   *
+   * @param coefficients from `offset` on. @shape targets × columns
+   */
   combine(
     firstColumn: number,
     count: number,
     coefficients: Float64Array,
     offset: number,
-    target: number,
+    firstTarget: number,
+    targetCount: number,
     lanes: number,
   ): void;
-  /** Adds the sums of products of every pair of columns, lower triangle row by row, to `target`. */
-  accumulateGram(firstColumn: number, count: number, lanes: number, target: Float64Array): void;
-  /** Adds the sums of response × column to `target`. @shape responses × columns */
+  /** Adds the products of `count` pairs of columns to a target, in their order; takes them off for a sign of -1. */
+  addProducts(firstLeft: number, firstRight: number, count: number, sign: 1 | -1, target: number, lanes: number): void;
+  /** Adds the sums of products of every pair of columns, lower triangle row by row, to `sums`. */
+  accumulateGram(firstColumn: number, count: number, lanes: number, sums: Float64Array): void;
+  /** Adds the sums of response × column to `sums`. @shape responses × columns */
   accumulateProducts(
     firstColumn: number,
     count: number,
     firstResponse: number,
     responseCount: number,
     lanes: number,
-    target: Float64Array,
+    sums: Float64Array,
   ): void;
-  /** The first column, from `firstColumn`, that holds a value that is not finite, with its lane; null if all are. */
-  findNotFinite(firstColumn: number, count: number, lanes: number): { column: number; lane: number } | null;
+  sum(column: number, lanes: number): number;
+  /** Moments of a column, by two passes. */
+  moments(column: number, lanes: number): Moments;
+  /** Whether every value lies above `lowest` and below infinity; not-a-number does not. */
+  areBetween(firstColumn: number, count: number, lowest: number, lanes: number): boolean;
 }
+
+/** Makes an interpreter; which kind does not change a bit of any result. */
+export type InterpreterMaker = (room: Room) => Interpreter;

@@ -1,121 +1,119 @@
+import type { Moments } from '../numeric/moments.js';
 import { exp, log, normalCumulative, normalQuantile, power } from './elementary.js';
-import type { Interpreter, LoadedProgram } from './interpreter.js';
-import { type Operation, operations } from './operations.js';
-import { blockLanes, instructionWidth, type Program } from './program.js';
-import { applyScalar, equal, less, lessOrEqual, select } from './scalar.js';
-import { drawUniforms, type StreamKey } from './stream.js';
-
-const operationOfCode = Object.keys(operations) as Operation[];
+import type { Interpreter, LoadedProgram, Room } from './interpreter.js';
+import { operations } from './operations.js';
+import { columnStride, instructionWidth, type Program } from './program.js';
+import { equal, less, lessOrEqual, maximum, minimum, select } from './scalar.js';
+import { drawUniforms } from './stream.js';
+import { uniformCodeOf } from './uniform-code.js';
 
 interface PlainProgram extends LoadedProgram {
-  readonly scalars: Float64Array;
-  readonly uniformCode: Int32Array;
+  readonly computeUniforms: () => void;
   /** Operands as offsets into the memory, each with the stride 1 (column) or 0 (scalar). */
   readonly laneCode: Int32Array;
-  readonly scalarsOffset: number;
 }
 
 const plainWidth = 8;
 
 /**
- * The readable interpreter: plain loops over the lanes of one column after the other.
+ * The readable interpreter, the reference for the other: plain loops over the lanes of one column after the other.
  *
  * Scalars live in the same memory as the columns, so that one loop with a stride of 0 or 1 serves both.
- *
- * @param scalarCount room for the scalars of all programs that will be loaded
  */
-export function createPlainInterpreter(columnCount: number, scalarCount: number): Interpreter {
-  const columnsLength = columnCount * blockLanes;
+export function createPlainInterpreter({ columnCount, programs }: Room): Interpreter {
+  const columnsLength = columnCount * columnStride;
+  const scalarCount = programs.reduce((total, program) => total + program.scalars.length, 0);
   const memory = new Float64Array(columnsLength + scalarCount);
   let scalarsEnd = columnsLength;
-  const interpreter = {
+  const startOf = (column: number) => column * columnStride;
+  return {
     columns: memory.subarray(0, columnsLength),
 
-    load(program: Program): LoadedProgram {
-      if (program.columnCount > columnCount)
-        throw new Error(`the workspace has ${columnCount} columns, the program needs ${program.columnCount}`);
+    programs: programs.map((program) => {
       const scalarsOffset = scalarsEnd;
       scalarsEnd += program.scalars.length;
-      if (scalarsEnd > memory.length) throw new Error('the workspace has no room for the scalars of another program');
       memory.set(program.scalars, scalarsOffset);
       return prepare(program, memory, scalarsOffset);
+    }),
+
+    run(loaded, lanes) {
+      const { computeUniforms, laneCode } = loaded as PlainProgram;
+      computeUniforms();
+      for (let i = 0; i < laneCode.length; i += plainWidth) runInstruction(memory, laneCode.subarray(i), lanes);
     },
 
-    run(loaded: LoadedProgram, lanes: number): void {
-      runProgram(loaded as PlainProgram, memory, lanes);
+    copy(fromColumn, toColumn, count) {
+      memory.copyWithin(startOf(toColumn), startOf(fromColumn), startOf(fromColumn + count));
     },
 
-    copy(fromColumn: number, toColumn: number, count: number): void {
-      memory.copyWithin(toColumn * blockLanes, fromColumn * blockLanes, (fromColumn + count) * blockLanes);
-    },
-
-    drawNormals(key: StreamKey, block: number, date: number, replicate: number, column: number, lanes: number): void {
-      const start = column * blockLanes;
-      drawUniforms(key, block, date, replicate, memory, start, lanes);
-      for (let i = start; i < start + lanes; i++) memory[i] = normalQuantile(memory[i]!);
-    },
-
-    combine(
-      firstColumn: number,
-      count: number,
-      coefficients: Float64Array,
-      offset: number,
-      target: number,
-      lanes: number,
-    ): void {
-      const out = target * blockLanes;
-      memory.fill(0, out, out + lanes);
-      for (let k = 0; k < count; k++) {
-        const from = (firstColumn + k) * blockLanes;
-        const coefficient = coefficients[offset + k]!;
-        if (coefficient === 0) continue;
-        for (let lane = 0; lane < lanes; lane++)
-          memory[out + lane] = memory[out + lane]! + coefficient * memory[from + lane]!;
+    drawNormals(keys, block, date, replicate, firstColumn, lanes) {
+      for (let i = 0; 2 * i < keys.length; i++) {
+        const start = startOf(firstColumn + i);
+        const key = { low: keys[2 * i]!, high: keys[2 * i + 1]! };
+        drawUniforms(key, block, date, replicate, memory, start, lanes);
+        for (let at = start; at < start + lanes; at++) memory[at] = normalQuantile(memory[at]!);
       }
     },
 
-    accumulateGram(firstColumn: number, count: number, lanes: number, target: Float64Array): void {
+    combine(firstColumn, count, coefficients, offset, firstTarget, targetCount, lanes) {
+      for (let target = 0; target < targetCount; target++) {
+        const out = startOf(firstTarget + target);
+        memory.fill(0, out, out + lanes);
+        for (let k = 0; k < count; k++) {
+          const from = startOf(firstColumn + k);
+          const coefficient = coefficients[offset + target * count + k]!;
+          for (let lane = 0; lane < lanes; lane++)
+            memory[out + lane] = memory[out + lane]! + coefficient * memory[from + lane]!;
+        }
+      }
+    },
+
+    addProducts(firstLeft, firstRight, count, sign, target, lanes) {
+      const out = startOf(target);
+      for (let k = 0; k < count; k++) {
+        const left = startOf(firstLeft + k);
+        const right = startOf(firstRight + k);
+        for (let lane = 0; lane < lanes; lane++)
+          memory[out + lane] = memory[out + lane]! + sign * (memory[left + lane]! * memory[right + lane]!);
+      }
+    },
+
+    accumulateGram(firstColumn, count, lanes, sums) {
       let position = 0;
       for (let row = 0; row < count; row++) {
         for (let column = 0; column <= row; column++, position++) {
-          target[position] =
-            target[position]! +
-            dot(memory, (firstColumn + row) * blockLanes, (firstColumn + column) * blockLanes, lanes);
+          const sum = dot(memory, startOf(firstColumn + row), startOf(firstColumn + column), lanes);
+          sums[position] = sums[position]! + sum;
         }
       }
     },
 
-    accumulateProducts(
-      firstColumn: number,
-      count: number,
-      firstResponse: number,
-      responseCount: number,
-      lanes: number,
-      target: Float64Array,
-    ): void {
+    accumulateProducts(firstColumn, count, firstResponse, responseCount, lanes, sums) {
       let position = 0;
       for (let response = 0; response < responseCount; response++) {
         for (let column = 0; column < count; column++, position++) {
-          target[position] =
-            target[position]! +
-            dot(memory, (firstColumn + column) * blockLanes, (firstResponse + response) * blockLanes, lanes);
+          const sum = dot(memory, startOf(firstResponse + response), startOf(firstColumn + column), lanes);
+          sums[position] = sums[position]! + sum;
         }
       }
     },
 
-    findNotFinite(firstColumn: number, count: number, lanes: number) {
+    sum: (column, lanes) => sumOf(memory, startOf(column), lanes, 0, false),
+
+    moments(column, lanes): Moments {
+      const mean = sumOf(memory, startOf(column), lanes, 0, false) / lanes;
+      return { count: lanes, mean, squares: sumOf(memory, startOf(column), lanes, mean, true) };
+    },
+
+    areBetween(firstColumn, count, lowest, lanes) {
       for (let column = firstColumn; column < firstColumn + count; column++) {
-        const start = column * blockLanes;
-        let sum = 0;
-        for (let lane = 0; lane < lanes; lane++) sum += memory[start + lane]! * 0;
-        if (sum !== 0) {
-          for (let lane = 0; lane < lanes; lane++) if (!Number.isFinite(memory[start + lane]!)) return { column, lane };
-        }
+        const start = startOf(column);
+        for (let at = start; at < start + lanes; at++)
+          if (!(memory[at]! > lowest && memory[at]! < Number.POSITIVE_INFINITY)) return false;
       }
-      return null;
+      return true;
     },
   };
-  return interpreter;
 }
 
 function prepare(program: Program, memory: Float64Array, scalarsOffset: number): PlainProgram {
@@ -125,60 +123,22 @@ function prepare(program: Program, memory: Float64Array, scalarsOffset: number):
   for (let i = 0; i < instructionCount; i++) {
     const [code, target, ...operands] = program.laneCode.subarray(i * instructionWidth, (i + 1) * instructionWidth);
     laneCode[i * plainWidth] = code!;
-    laneCode[i * plainWidth + 1] = target! * blockLanes;
+    laneCode[i * plainWidth + 1] = target! * columnStride;
     operands.forEach((operand, position) => {
-      laneCode[i * plainWidth + 2 + position] = operand >= 0 ? operand * blockLanes : scalarsOffset - 1 - operand;
+      laneCode[i * plainWidth + 2 + position] = operand >= 0 ? operand * columnStride : scalarsOffset - 1 - operand;
       laneCode[i * plainWidth + 5 + position] = operand >= 0 ? 1 : 0;
     });
   }
   return {
+    name: program.name,
     uniforms: scalars.subarray(0, program.uniformInputCount),
-    scalars,
-    uniformCode: program.uniformCode,
+    computeUniforms: uniformCodeOf(program, scalars),
     laneCode,
-    scalarsOffset,
   };
 }
 
-function runProgram(program: PlainProgram, m: Float64Array, lanes: number): void {
-  const { scalars, uniformCode, laneCode } = program;
-  for (let i = 0; i < uniformCode.length; i += instructionWidth) {
-    scalars[uniformCode[i + 1]!] = applyScalar(
-      operationOfCode[uniformCode[i]!]!,
-      scalars[uniformCode[i + 2]!]!,
-      scalars[uniformCode[i + 3]!]!,
-      scalars[uniformCode[i + 4]!]!,
-    );
-  }
-  for (let i = 0; i < laneCode.length; i += plainWidth) {
-    const out = laneCode[i + 1]!;
-    runInstruction(
-      m,
-      laneCode[i]!,
-      out,
-      laneCode[i + 2]!,
-      laneCode[i + 3]!,
-      laneCode[i + 4]!,
-      laneCode[i + 5]!,
-      laneCode[i + 6]!,
-      laneCode[i + 7]!,
-      lanes,
-    );
-  }
-}
-
-function runInstruction(
-  m: Float64Array,
-  code: number,
-  out: number,
-  a: number,
-  b: number,
-  c: number,
-  aStride: number,
-  bStride: number,
-  cStride: number,
-  lanes: number,
-): void {
+function runInstruction(m: Float64Array, instruction: Int32Array, lanes: number): void {
+  const [code, out, a, b, c, aStride, bStride, cStride] = instruction as unknown as PlainInstruction;
   switch (code) {
     case operations.copy.code:
       for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]!;
@@ -196,10 +156,10 @@ function runInstruction(
       for (let i = 0; i < lanes; i++) m[out + i] = m[a + i * aStride]! / m[b + i * bStride]!;
       break;
     case operations.minimum.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = Math.min(m[a + i * aStride]!, m[b + i * bStride]!);
+      for (let i = 0; i < lanes; i++) m[out + i] = minimum(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.maximum.code:
-      for (let i = 0; i < lanes; i++) m[out + i] = Math.max(m[a + i * aStride]!, m[b + i * bStride]!);
+      for (let i = 0; i < lanes; i++) m[out + i] = maximum(m[a + i * aStride]!, m[b + i * bStride]!);
       break;
     case operations.power.code:
       for (let i = 0; i < lanes; i++) m[out + i] = power(m[a + i * aStride]!, m[b + i * bStride]!);
@@ -244,21 +204,23 @@ function runInstruction(
   }
 }
 
-/** Sum of products of two columns in the fixed order of four running sums. */
+type PlainInstruction = [number, number, number, number, number, number, number, number];
+
+/** Sum of products of two columns: of the even lanes plus of the odd lanes. */
 function dot(m: Float64Array, a: number, b: number, lanes: number): number {
-  let s0 = 0;
-  let s1 = 0;
-  let s2 = 0;
-  let s3 = 0;
-  const whole = lanes & ~3;
-  for (let i = 0; i < whole; i += 4) {
-    s0 += m[a + i]! * m[b + i]!;
-    s1 += m[a + i + 1]! * m[b + i + 1]!;
-    s2 += m[a + i + 2]! * m[b + i + 2]!;
-    s3 += m[a + i + 3]! * m[b + i + 3]!;
+  let even = 0;
+  let odd = 0;
+  for (let i = 0; i < lanes; i += 2) even += m[a + i]! * m[b + i]!;
+  for (let i = 1; i < lanes; i += 2) odd += m[a + i]! * m[b + i]!;
+  return even + odd;
+}
+
+/** Sum of the distances from a center, or of their squares, in the same order. */
+function sumOf(m: Float64Array, start: number, lanes: number, center: number, isSquared: boolean): number {
+  const sums = [0, 0];
+  for (let lane = 0; lane < lanes; lane++) {
+    const distance = m[start + lane]! - center;
+    sums[lane % 2]! += isSquared ? distance * distance : distance;
   }
-  if (whole < lanes) s0 += m[a + whole]! * m[b + whole]!;
-  if (whole + 1 < lanes) s1 += m[a + whole + 1]! * m[b + whole + 1]!;
-  if (whole + 2 < lanes) s2 += m[a + whole + 2]! * m[b + whole + 2]!;
-  return s0 + s2 + (s1 + s3);
+  return sums[0]! + sums[1]!;
 }

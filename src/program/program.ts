@@ -1,6 +1,12 @@
 /** Lanes of one block: as many paths as run together through each instruction. */
 export const blockLanes = 512;
 
+/**
+ * Numbers from the start of one column of a workspace to the next: a block and one cache line. Columns a power of two
+ * apart would compete for the same few places of the cache (measured: an addition takes half as long again).
+ */
+export const columnStride = blockLanes + 8;
+
 /** Integers of one instruction: operation code, target, three operands. */
 export const instructionWidth = 5;
 
@@ -11,6 +17,7 @@ export const instructionWidth = 5;
  * i, which all lanes share. The uniform code computes scalars from scalars, once for each run.
  */
 export interface Program {
+  readonly name: string;
   /** Initial scalars: the uniform inputs (zeros), then constants, then results of the uniform code (zeros). */
   readonly scalars: Float64Array;
   readonly uniformInputCount: number;

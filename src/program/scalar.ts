@@ -2,51 +2,45 @@ import { exp, log, normalCumulative, power } from './elementary.js';
 import type { Operation } from './operations.js';
 
 /**
- * Applies one operation to plain numbers: the meaning that every interpreter must reproduce bit for bit.
+ * What each operation means for plain numbers: the meaning that every interpreter must reproduce bit for bit.
  *
- * Constant folding and the once-per-step part of a program run through it.
+ * Constant folding and the once-per-run part of a program use it directly.
  */
+export const scalarFunctions: Readonly<Record<Operation, (a: number, b: number, c: number) => number>> = {
+  copy: (a) => a,
+  add: (a, b) => a + b,
+  subtract: (a, b) => a - b,
+  multiply: (a, b) => a * b,
+  divide: (a, b) => a / b,
+  minimum,
+  maximum,
+  power,
+  negate: (a) => -a,
+  absolute: Math.abs,
+  squareRoot: Math.sqrt,
+  exponential: exp,
+  logarithm: log,
+  floor: Math.floor,
+  normalCumulative,
+  less,
+  lessOrEqual,
+  equal,
+  select,
+};
+
+/** Applies one operation to plain numbers; operands beyond its own are ignored. */
 export function applyScalar(operation: Operation, a: number, b: number, c: number): number {
-  switch (operation) {
-    case 'copy':
-      return a;
-    case 'add':
-      return a + b;
-    case 'subtract':
-      return a - b;
-    case 'multiply':
-      return a * b;
-    case 'divide':
-      return a / b;
-    case 'minimum':
-      return Math.min(a, b);
-    case 'maximum':
-      return Math.max(a, b);
-    case 'power':
-      return power(a, b);
-    case 'negate':
-      return -a;
-    case 'absolute':
-      return Math.abs(a);
-    case 'squareRoot':
-      return Math.sqrt(a);
-    case 'exponential':
-      return exp(a);
-    case 'logarithm':
-      return log(a);
-    case 'floor':
-      return Math.floor(a);
-    case 'normalCumulative':
-      return normalCumulative(a);
-    case 'less':
-      return less(a, b);
-    case 'lessOrEqual':
-      return lessOrEqual(a, b);
-    case 'equal':
-      return equal(a, b);
-    case 'select':
-      return select(a, b, c);
-  }
+  return scalarFunctions[operation](a, b, c);
+}
+
+/** The smaller; of equal ones (0 and -0 are) the first; not a number if an operand is not. */
+export function minimum(a: number, b: number): number {
+  return b < a ? b : Number.isNaN(b) ? b : a;
+}
+
+/** The larger; of equal ones (0 and -0 are) the first; not a number if an operand is not. */
+export function maximum(a: number, b: number): number {
+  return a < b ? b : Number.isNaN(b) ? b : a;
 }
 
 /** 1 or 0; not a number if an operand is not. */

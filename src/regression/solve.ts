@@ -14,6 +14,8 @@ export interface CompressedColumns {
   readonly dropped: readonly number[];
   /** Upper triangle with one row for each kept column. */
   readonly triangle: readonly (readonly number[])[];
+  /** Inverse of the triangle: the regression package's answer to one response for each row. */
+  readonly inverse: readonly (readonly number[])[];
 }
 
 /**
@@ -48,49 +50,46 @@ export function compressColumns(gram: Float64Array, columnCount: number): Compre
     kept.push(pivot);
     rows.push(row);
   }
-  return {
-    columnCount,
-    scales,
-    kept,
-    dropped: [...open].sort((a, b) => a - b),
-    triangle: rows.map((row) => kept.map((column) => row[column]!)),
-  };
+  const triangle = rows.map((row) => kept.map((column) => row[column]!));
+  const dropped = [...open].sort((a, b) => a - b);
+  return { columnCount, scales, kept, dropped, triangle, inverse: invert(triangle) };
+}
+
+/** Regresses the unit vectors on the triangle: the coefficients are its inverse, once for all responses to come. */
+function invert(triangle: readonly (readonly number[])[]): number[][] {
+  if (triangle.length === 0) return [];
+  const units = Matrix.eye(triangle.length);
+  const options = { intercept: false, statistics: false };
+  return new MultivariateLinearRegression(new Matrix(triangle as number[][]), units, options).weights;
 }
 
 /**
  * Solves for the coefficients of every response on the compressed columns.
  *
- * The triangle R stands for all rows of the tall matrix, and R⁻ᵀ (column × response) for the responses, so the
- * least-squares problem of the regression package has as many rows as kept columns.
+ * The triangle R stands for all rows of the tall matrix, and R⁻ᵀ (column × response) for the responses; R⁻¹ times that
+ * are the coefficients.
  *
  * @param products Σ response × column. @shape responses × columns
  * @returns coefficients, those of dropped columns 0. @shape responses × columns
  */
 export function solveResponses(
-  compressed: CompressedColumns,
+  { columnCount, scales, kept, triangle, inverse }: CompressedColumns,
   products: Float64Array,
   responseCount: number,
 ): Float64Array {
-  const { columnCount, scales, kept, triangle } = compressed;
   const coefficients = new Float64Array(responseCount * columnCount);
-  if (kept.length > 0) {
-    const reduced = Matrix.zeros(kept.length, responseCount);
-    for (let response = 0; response < responseCount; response++) {
-      for (let i = 0; i < kept.length; i++) {
-        let sum = products[response * columnCount + kept[i]!]! * scales[kept[i]!]!;
-        for (let k = 0; k < i; k++) sum -= triangle[k]![i]! * reduced.get(k, response);
-        reduced.set(i, response, sum / triangle[i]![i]!);
-      }
+  const reduced = new Float64Array(kept.length);
+  for (let first = 0; first < coefficients.length; first += columnCount) {
+    for (let i = 0; i < kept.length; i++) {
+      let sum = products[first + kept[i]!]! * scales[kept[i]!]!;
+      for (let k = 0; k < i; k++) sum -= triangle[k]![i]! * reduced[k]!;
+      reduced[i] = sum / triangle[i]![i]!;
     }
-    const { weights } = new MultivariateLinearRegression(new Matrix(triangle as number[][]), reduced, {
-      intercept: false,
-      statistics: false,
-    });
-    kept.forEach((column, i) => {
-      for (let response = 0; response < responseCount; response++) {
-        coefficients[response * columnCount + column] = weights[i]![response]! * scales[column]!;
-      }
-    });
+    for (let i = 0; i < kept.length; i++) {
+      let sum = 0;
+      for (let k = i; k < kept.length; k++) sum += inverse[i]![k]! * reduced[k]!;
+      coefficients[first + kept[i]!] = sum * scales[kept[i]!]!;
+    }
   }
   return coefficients;
 }

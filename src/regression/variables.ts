@@ -44,8 +44,9 @@ export function writeVariables(
     const sorted = sortFalling(
       graph,
       members.map((index) => states[index]!),
+      Math.min(members.length, leadingRankCount),
     );
-    const ranks = sorted.slice(0, leadingRankCount).map((node, rank) => ({
+    const ranks = sorted.map((node, rank) => ({
       name: `${name} ranked ${rank + 1}`,
       node: coordinate(node, members[0]!),
       leading: true,

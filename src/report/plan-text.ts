@@ -9,7 +9,9 @@ export function planText(record: RunRecord, width: number): string {
   const { plan, pilot } = record;
   const sentences = [
     `${counted(plan.fitPathCount, 'path')} fit the rule.`,
-    `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with ${counted(plan.innerPointCount, 'point')} of one step at every path and date.`,
+    plan.innerPointCount === 0
+      ? `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with the regressed martingale and no inner draws.`
+      : `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with ${counted(plan.innerPointCount, 'point')} of one step at every path and date.`,
   ];
   if (plan.nestedOuterPathCount > 0) {
     sentences.push(

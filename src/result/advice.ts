@@ -117,14 +117,15 @@ function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
 
 function effort({ plan, lower, upper }: Measures): Finding {
   const smallest = Math.min(lower.pathCount, upper.pathCount);
-  const enough = smallest >= fewestOuterPaths && plan.innerPointCount >= fewestInnerPoints;
+  const { innerPointCount } = plan;
+  const enough = smallest >= fewestOuterPaths && (innerPointCount === 0 || innerPointCount >= fewestInnerPoints);
   if (enough) return { passed: `The error bars rest on ${paths(smallest)} paths or more.` };
   return {
     doubt: advice('effort-too-small', {
-      what: `The bounds rest on ${paths(smallest)} outer paths with ${plan.innerPointCount} inner points each.`,
+      what: `The bounds rest on ${paths(smallest)} outer paths with ${innerPointCount} inner points each.`,
       why: `Below ${fewestOuterPaths} paths a 95% interval may cover less than 95%; below ${fewestInnerPoints} inner points the upper bound is mostly noise.`,
       mend: 'Leave `counts` under method out, so that a pilot chooses them, or raise `outer` and `inner`.',
-      evidence: { outerPathCount: smallest, innerPointCount: plan.innerPointCount },
+      evidence: { outerPathCount: smallest, innerPointCount },
     }),
   };
 }

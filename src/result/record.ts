@@ -25,7 +25,7 @@ export interface Plan {
   readonly fitPathCount: number;
   /** Paths that carry both bounds; any count from 2 up, the last block may be short. */
   readonly outerPathCount: number;
-  /** Points of one step drawn for every outer path and date. */
+  /** Points of one step drawn for every outer path and date; 0 leaves both bounds to the regressed martingale. */
   readonly innerPointCount: number;
   /** Counts of the Andersen-Broadie upper bound; 0 when it is not computed. */
   readonly nestedOuterPathCount: number;
@@ -99,6 +99,8 @@ export interface RunRecord {
   /** Checks that ran and found nothing, in words. */
   readonly passedChecks: readonly string[];
   readonly settings: readonly Setting[];
+  /** What ran the programs; no figure of the record depends on it. */
+  readonly interpreter: 'wasm' | 'plain';
   readonly timing: {
     readonly totalSeconds: number;
     readonly fitSeconds: number;

@@ -29,8 +29,9 @@ export interface StepFit {
 /** Steps of the conjugate gradients at each date; the accuracy gained by more is below the regression's own error. */
 export const searchStepCount = 3;
 
-/** Sweeps over the fit's paths at each date. */
-export const sweepsPerDate = 2 + searchStepCount;
+/** Sweeps over the fit's paths at each date; without a martingale, the one for the continuation value. */
+export const sweepsPerDate = ({ polynomialNames }: Programs) =>
+  polynomialNames.length === 0 ? 1 : 2 + searchStepCount;
 
 /**
  * Fits a rule and its martingale backward in time; fills `rule` and reports each date.
@@ -78,6 +79,7 @@ async function fitDate(
 
   const values = addSums(await work.sweep('values', date));
   const all = compressColumns(values.gram, columnCount);
+  if (polynomialCount === 0) return fitContinuation(programs, rule, date, all, values);
   const low = compressColumns(values.gram, integrandColumnCount);
   const precondition = (gradient: Float64Array) =>
     joined(
@@ -99,6 +101,22 @@ async function fitDate(
   for (let k = 0; k < columnCount; k++) continuation[k] = continuation[k]! + search.solution[k]!;
   rule.integrands.set(search.solution.subarray(columnCount), date * integrandLength);
   return describeFit(date, all, values.response, residuals.response, search.decrease);
+}
+
+/** The fit at a date where there is no martingale: continuation value alone. */
+function fitContinuation(
+  { columns }: Programs,
+  rule: Rule,
+  date: number,
+  all: CompressedColumns,
+  { products, response }: SweepSums,
+): StepFit {
+  const coefficients = solveResponses(all, products, 1);
+  rule.continuation.set(coefficients, date * columns.length);
+  // What least squares leaves: Σ response² less coefficients × right-hand side.
+  const total = response.squares + response.count * response.mean * response.mean;
+  const rest = { ...response, squares: Math.max(0, total - dot(coefficients, products)) };
+  return describeFit(date, all, response, rest, 0);
 }
 
 /**

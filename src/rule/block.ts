@@ -1,13 +1,18 @@
 import { stepUniforms } from '../paths/step-program.js';
-import { type Purpose, streamKey } from '../paths/stream-keys.js';
-import type { Interpreter, LoadedProgram } from '../program/interpreter.js';
-import { createPlainInterpreter } from '../program/plain-interpreter.js';
-import { blockLanes } from '../program/program.js';
-import type { StreamKey } from '../program/stream.js';
+import { type Purpose, streamKeys } from '../paths/stream-keys.js';
+import type { Interpreter, InterpreterMaker, LoadedProgram } from '../program/interpreter.js';
+import { blockLanes, columnStride, type Program } from '../program/program.js';
 import { dateUniforms } from './date-graph.js';
 import { NotFinite } from './not-finite.js';
-import { type Programs, programList, workspaceColumnCount } from './programs.js';
+import { largestNumberCount, type Programs, programList, workspaceColumnCount } from './programs.js';
 import type { Rule } from './rule.js';
+
+/** Neighbouring drivers whose laws keep them all above the same number. */
+interface DriverRun {
+  readonly first: number;
+  readonly count: number;
+  readonly lowest: number;
+}
 
 /**
  * One block of lanes with everything that a model can do to it: the stages of a run are written in its words.
@@ -16,39 +21,47 @@ import type { Rule } from './rule.js';
  */
 export class Block {
   readonly interpreter: Interpreter;
-  readonly columns: Float64Array;
   /** Paths in this block; lanes beyond are not looked at. */
   lanes = blockLanes;
-  readonly #step: LoadedProgram;
-  readonly #evaluate: LoadedProgram;
-  readonly #amounts: LoadedProgram;
-  readonly #variables: LoadedProgram;
-  readonly #polynomials: LoadedProgram;
-  readonly #keys = new Map<Purpose, StreamKey[]>();
+  readonly #loaded: Map<Program, LoadedProgram>;
+  readonly #keys = new Map<Purpose, Int32Array>();
+  readonly #driverRuns: readonly DriverRun[];
 
+  /** @param stagePrograms what the stages run beside the model's own programs */
   constructor(
     readonly programs: Programs,
     readonly seed: string,
+    makeInterpreter: InterpreterMaker,
+    stagePrograms: readonly Program[] = [],
   ) {
-    const all = programList(programs);
-    const scalarCount = all.reduce((total, program) => total + program.scalars.length, 0);
-    this.interpreter = createPlainInterpreter(workspaceColumnCount(programs), scalarCount);
-    this.columns = this.interpreter.columns;
-    const [step, evaluate, amounts, variables, polynomials] = all.map((program) => this.interpreter.load(program));
-    this.#step = step!;
-    this.#evaluate = evaluate!;
-    this.#amounts = amounts!;
-    this.#variables = variables!;
-    this.#polynomials = polynomials!;
+    const all = [...programList(programs), ...stagePrograms];
+    const columnCount = Math.max(
+      workspaceColumnCount(programs),
+      ...stagePrograms.map((program) => program.columnCount),
+    );
+    this.interpreter = makeInterpreter({ columnCount, programs: all, numberCount: largestNumberCount(programs) });
+    this.#loaded = new Map(all.map((program, index) => [program, this.interpreter.programs[index]!]));
+    this.#driverRuns = findDriverRuns(programs);
   }
 
   /** The values of one column on the lanes in use; a view, changed by whatever runs next. */
   column(column: number): Float64Array {
-    return this.columns.subarray(column * blockLanes, column * blockLanes + this.lanes);
+    return this.interpreter.columns.subarray(column * columnStride, column * columnStride + this.lanes);
   }
 
   get driverCount(): number {
     return this.programs.drivers.length;
+  }
+
+  /** Runs one of the model's or the stages' programs. */
+  run(program: Program): void {
+    this.interpreter.run(this.loaded(program), this.lanes);
+  }
+
+  loaded(program: Program): LoadedProgram {
+    const loaded = this.#loaded.get(program);
+    if (loaded === undefined) throw new Error('the block was not made with this program');
+    return loaded;
   }
 
   /** Puts every path at its start, as the state after a step that led to today. */
@@ -65,60 +78,41 @@ export class Block {
 
   /** Draws the innovations of the step that leaves a date. `replicate` tells repeated draws of one step apart. */
   draw(purpose: Purpose, block: number, date: number, replicate: number): void {
-    const { layout } = this.programs;
-    this.#keysOf(purpose).forEach((key, index) => {
-      this.interpreter.drawNormals(key, block, date, replicate, layout.innovations + index, this.lanes);
-    });
+    const { innovations } = this.programs.layout;
+    this.interpreter.drawNormals(this.#keysOf(purpose), block, date, replicate, innovations, this.lanes);
   }
 
   /** Moves the drivers from `state` at a date to `next` at the following one. */
   step(date: number, firstPath: number): void {
-    const { times, layout, drivers } = this.programs;
-    this.#step.uniforms[stepUniforms.duration] = times[date + 1]! - times[date]!;
-    this.interpreter.run(this.#step, this.lanes);
-    const bad = this.interpreter.findNotFinite(layout.next, drivers.length, this.lanes) ?? this.#findVanished();
-    if (bad === null) return;
-    const { name, line, isPositive } = drivers[bad.column - layout.next]!;
-    const value = this.columns[bad.column * blockLanes + bad.lane]!;
-    const what =
-      isPositive && value === 0
-        ? `the driver ${name} fell below the smallest number there is; its logarithm`
-        : `the driver ${name}`;
-    throw new NotFinite({ what, line, path: firstPath + bad.lane, date: date + 1, time: times[date + 1]! });
-  }
-
-  /** A driver that its law keeps positive, rounded to 0. */
-  #findVanished(): { column: number; lane: number } | null {
-    const { layout, drivers } = this.programs;
-    for (let driver = 0; driver < drivers.length; driver++) {
-      if (!drivers[driver]!.isPositive) continue;
-      const lane = this.column(layout.next + driver).indexOf(0);
-      if (lane >= 0) return { column: layout.next + driver, lane };
+    const { times, layout, step } = this.programs;
+    this.loaded(step).uniforms[stepUniforms.duration] = times[date + 1]! - times[date]!;
+    this.run(step);
+    for (const { first, count, lowest } of this.#driverRuns) {
+      if (!this.interpreter.areBetween(layout.next + first, count, lowest, this.lanes))
+        throw this.#badDriver(date + 1, firstPath);
     }
-    return null;
   }
 
   /** Writes the variables of the automatic basis at `next`. */
   writeVariables(): void {
-    this.interpreter.run(this.#variables, this.lanes);
+    this.run(this.programs.variables);
   }
 
   /**
    * Writes discounted payoff, terminal amount and, before the last date, the basis columns for the drivers in `next`.
    */
   evaluate(date: number, rule: Rule, firstPath: number): void {
-    const { times, discountFactors: factors, variableCount, layout } = this.programs;
-    const program = date === times.length - 1 ? this.#amounts : this.#evaluate;
-    const { uniforms } = program;
+    const { times, discountFactors: factors, variableCount, layout, amounts, evaluate } = this.programs;
+    const program = date === times.length - 1 ? amounts : evaluate;
+    const { uniforms } = this.loaded(program);
     uniforms[dateUniforms.clock] = times[date]!;
     uniforms[dateUniforms.discountFactor] = factors[date]!;
     uniforms[dateUniforms.untilNext] = (times[date + 1] ?? times[date]!) - times[date]!;
     uniforms[dateUniforms.untilLast] = times.at(-1)! - times[date]!;
-    uniforms.set(
-      rule.standards.subarray(date * variableCount * 2, (date + 1) * variableCount * 2),
-      dateUniforms.firstStandard,
-    );
-    this.interpreter.run(program, this.lanes);
+    const firstStandard = date * variableCount * 2;
+    for (let i = 0; i < variableCount * 2; i++)
+      uniforms[dateUniforms.firstStandard + i] = rule.standards[firstStandard + i]!;
+    this.run(program);
     this.#checkFinite(layout.payoff, 2, date, firstPath);
   }
 
@@ -127,96 +121,117 @@ export class Block {
     this.#checkFinite(this.programs.layout.basis, this.programs.columns.length, date, firstPath);
   }
 
-  /** Writes the continuation value at `next`, from the basis there, into a column. */
-  continuation(date: number, rule: Rule, target: number, firstPath: number): void {
-    const { layout, columns, floor } = this.programs;
-    this.interpreter.combine(
-      layout.basis,
-      columns.length,
-      rule.continuation,
-      date * columns.length,
-      target,
-      this.lanes,
-    );
-    if (this.interpreter.findNotFinite(target, 1, this.lanes) !== null) this.checkBasis(date, firstPath);
-    if (floor === null) return;
-    const values = this.column(target);
-    for (let lane = 0; lane < values.length; lane++) if (values[lane]! < floor) values[lane] = floor;
+  /** Writes basis × coefficients, from the basis at `next`, into a column. */
+  combineBasis(coefficients: Float64Array, offset: number, target: number): void {
+    const { layout, columns } = this.programs;
+    this.interpreter.combine(layout.basis, columns.length, coefficients, offset, target, 1, this.lanes);
   }
 
   /**
-   * Writes the fitted value at `next`: the larger of payoff and continuation value, which goes to `hold`; on the last
-   * date the terminal amount.
+   * Writes the fitted value at `next` to `value`: the larger of payoff and continuation value, which goes to `hold`; on
+   * the last date the terminal amount.
    */
-  value(date: number, rule: Rule, hold: number, target: number, firstPath: number): void {
-    const { layout, times } = this.programs;
-    const values = this.column(target);
+  value(date: number, rule: Rule, firstPath: number): void {
+    const { layout, times, columns, value } = this.programs;
     if (date === times.length - 1) {
-      values.set(this.column(layout.terminal));
+      this.interpreter.copy(layout.terminal, layout.value, 1);
       return;
     }
-    this.continuation(date, rule, hold, firstPath);
-    const payoff = this.column(layout.payoff);
-    const continuation = this.column(hold);
-    for (let lane = 0; lane < values.length; lane++) values[lane] = Math.max(payoff[lane]!, continuation[lane]!);
+    this.combineBasis(rule.continuation, date * columns.length, layout.hold);
+    if (!this.interpreter.areBetween(layout.hold, 1, Number.NEGATIVE_INFINITY, this.lanes))
+      this.checkBasis(date, firstPath);
+    this.run(value);
   }
 
   /**
-   * Writes the integrands at `next`, from the basis there, into as many columns as there are polynomials.
+   * Writes the integrands at `next`, from the basis there, to `integrands`.
    *
    * @param coefficients polynomials × integrand columns, from the offset on
    */
-  integrands(coefficients: Float64Array, offset: number, target: number): void {
+  integrands(coefficients: Float64Array, offset: number): void {
     const { layout, integrandColumnCount: count, polynomialNames } = this.programs;
-    for (let p = 0; p < polynomialNames.length; p++) {
-      this.interpreter.combine(layout.basis, count, coefficients, offset + p * count, target + p, this.lanes);
-    }
+    const polynomialCount = polynomialNames.length;
+    if (polynomialCount === 0) return;
+    this.interpreter.combine(layout.basis, count, coefficients, offset, layout.integrands, polynomialCount, this.lanes);
   }
 
   /** Writes the rule's integrands at a date. */
-  ruleIntegrands(date: number, rule: Rule, target: number): void {
+  ruleIntegrands(date: number, rule: Rule): void {
     const { integrandColumnCount, polynomialNames } = this.programs;
-    this.integrands(rule.integrands, date * polynomialNames.length * integrandColumnCount, target);
+    this.integrands(rule.integrands, date * polynomialNames.length * integrandColumnCount);
   }
 
   /** Writes the polynomials of the innovations, given the drivers in `state`. */
   polynomials(): void {
-    this.interpreter.run(this.#polynomials, this.lanes);
+    this.run(this.programs.polynomials);
   }
 
-  /** Adds factor × Σ integrand × polynomial to a column: the regressed martingale's increment over the step. */
-  addIncrement(integrands: number, factor: number, target: number): void {
+  /** Adds Σ integrand × polynomial to a column, or takes it off: the regressed martingale's increment over the step. */
+  addIncrement(sign: 1 | -1, target: number): void {
     const { layout, polynomialNames } = this.programs;
-    const out = this.column(target);
-    for (let p = 0; p < polynomialNames.length; p++) {
-      const integrand = this.column(integrands + p);
-      const polynomial = this.column(layout.polynomials + p);
-      for (let lane = 0; lane < out.length; lane++)
-        out[lane] = out[lane]! + factor * integrand[lane]! * polynomial[lane]!;
-    }
+    const { integrands, polynomials } = layout;
+    this.interpreter.addProducts(integrands, polynomials, polynomialNames.length, sign, target, this.lanes);
+  }
+
+  /** A driver that is not finite, or that its law keeps positive and that was rounded to 0. */
+  #badDriver(date: number, firstPath: number): NotFinite {
+    const { times, layout, drivers } = this.programs;
+    const place = this.#firstWhere(layout.next, drivers.length, (value, driver) => {
+      return !Number.isFinite(value) || (drivers[driver]!.isPositive && value <= 0);
+    });
+    if (place === null) throw new Error('a bound on the drivers failed without a driver that breaks it');
+    const { name, line } = drivers[place.position]!;
+    const what =
+      place.value === 0
+        ? `the driver ${name} fell below the smallest number there is; its logarithm`
+        : `the driver ${name}`;
+    return new NotFinite({ what, line, path: firstPath + place.lane, date, time: times[date]! });
   }
 
   #checkFinite(first: number, count: number, date: number, firstPath: number): void {
-    const bad = this.interpreter.findNotFinite(first, count, this.lanes);
-    if (bad === null) return;
+    if (this.interpreter.areBetween(first, count, Number.NEGATIVE_INFINITY, this.lanes)) return;
+    const place = this.#firstWhere(first, count, (value) => !Number.isFinite(value));
+    if (place === null) throw new Error('a check for finite numbers failed without one that is not');
     const { layout, columns, payoffLine, times } = this.programs;
-    const isColumn = bad.column >= layout.basis;
-    const column = isColumn ? columns[bad.column - layout.basis]! : null;
+    const bad = first + place.position;
+    const column = bad >= layout.basis ? columns[bad - layout.basis]! : null;
     const what =
       column !== null
         ? `the basis column ${column.name}`
-        : bad.column === layout.payoff
+        : bad === layout.payoff
           ? 'the payoff'
           : 'the amount at expiry';
     const line = column !== null ? column.line : payoffLine;
-    throw new NotFinite({ what, line, path: firstPath + bad.lane, date, time: times[date]! });
+    throw new NotFinite({ what, line, path: firstPath + place.lane, date, time: times[date]! });
   }
 
-  #keysOf(purpose: Purpose): StreamKey[] {
+  /** The first value that meets a test, column by column. */
+  #firstWhere(first: number, count: number, isMet: (value: number, position: number) => boolean) {
+    for (let position = 0; position < count; position++) {
+      const values = this.column(first + position);
+      const lane = values.findIndex((value) => isMet(value, position));
+      if (lane >= 0) return { position, lane, value: values[lane]! };
+    }
+    return null;
+  }
+
+  #keysOf(purpose: Purpose): Int32Array {
     const known = this.#keys.get(purpose);
     if (known !== undefined) return known;
-    const keys = this.programs.drivers.map(({ name }) => streamKey(this.seed, purpose, name));
+    const names = this.programs.drivers.map(({ name }) => name);
+    const keys = streamKeys(this.seed, purpose, names);
     this.#keys.set(purpose, keys);
     return keys;
   }
+}
+
+function findDriverRuns({ drivers }: Programs): DriverRun[] {
+  const runs: DriverRun[] = [];
+  drivers.forEach(({ isPositive }, index) => {
+    const lowest = isPositive ? 0 : Number.NEGATIVE_INFINITY;
+    const run = runs.at(-1);
+    if (run?.lowest === lowest) runs[runs.length - 1] = { ...run, count: run.count + 1 };
+    else runs.push({ first: index, count: 1, lowest });
+  });
+  return runs;
 }

@@ -1,5 +1,5 @@
-import { type Moments, mergeMoments, momentsOf, noMoments } from '../numeric/moments.js';
-import { blockLanes } from '../program/program.js';
+import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
+import { blockLanes, columnStride } from '../program/program.js';
 import type { Block } from './block.js';
 import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
@@ -11,7 +11,7 @@ import type { Rule } from './rule.js';
  */
 export interface FitStore {
   readonly pathCount: number;
-  /** @shape blocks × dates (1 … last) × drivers × lanes */
+  /** @shape blocks × dates (1 … last) × drivers × columnStride */
   readonly paths: Float64Array;
   /** Fitted value of each path at the date after the one in work, in money of today. @shape paths */
   readonly values: Float64Array;
@@ -66,7 +66,7 @@ export function simulateFit(block: Block, store: FitStore, range: BlockRange): M
       block.writeVariables();
       const row = moments[date + 1]!;
       for (let v = 0; v < programs.variableCount; v++) {
-        row[v] = mergeMoments(row[v]!, momentsOf(block.column(layout.variables + v), 0, block.lanes));
+        row[v] = mergeMoments(row[v]!, block.interpreter.moments(layout.variables + v, block.lanes));
       }
     }
   });
@@ -78,94 +78,87 @@ export function simulateFit(block: Block, store: FitStore, range: BlockRange): M
  * equations of that on the basis at this date.
  */
 export function sweepValues(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
+  const { interpreter } = block;
   const { layout, columns } = block.programs;
-  const hold = layout.stage;
-  const value = layout.stage + 1;
   const sums = emptySums(block.programs, 'gram');
   let response = noMoments;
   forEachBlock(block, range, store.pathCount, (index, firstPath) => {
     loadPaths(block, store, index, date + 1);
     block.evaluate(date + 1, rule, firstPath);
-    block.value(date + 1, rule, hold, value, firstPath);
-    const values = block.column(value);
-    store.values.set(values, firstPath);
+    block.value(date + 1, rule, firstPath);
+    store.values.set(block.column(layout.value), firstPath);
     loadPaths(block, store, index, date);
     block.evaluate(date, rule, firstPath);
-    block.checkBasis(date, firstPath);
-    block.interpreter.accumulateGram(layout.basis, columns.length, block.lanes, sums.gram);
-    block.interpreter.accumulateProducts(layout.basis, columns.length, value, 1, block.lanes, sums.products);
-    response = mergeMoments(response, momentsOf(values, 0, block.lanes));
+    interpreter.accumulateGram(layout.basis, columns.length, block.lanes, sums.gram);
+    if (!hasFiniteSquares(sums.gram)) block.checkBasis(date, firstPath);
+    interpreter.accumulateProducts(layout.basis, columns.length, layout.value, 1, block.lanes, sums.products);
+    response = mergeMoments(response, interpreter.moments(layout.value, block.lanes));
   });
   return { ...sums, response };
 }
 
 /** Sums the products of basis and basis × polynomial with what the continuation value leaves of the next value. */
 export function sweepResiduals(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
-  const { columns, layout } = block.programs;
-  return sweepProducts(block, store, rule, date, range, (firstPath, target) => {
-    block.interpreter.combine(
-      layout.basis,
-      columns.length,
-      rule.continuation,
-      date * columns.length,
-      target,
-      block.lanes,
-    );
-    const rest = block.column(target);
-    for (let lane = 0; lane < block.lanes; lane++) rest[lane] = store.values[firstPath + lane]! - rest[lane]!;
+  const { columns, layout, rest } = block.programs;
+  return sweepProducts(block, store, rule, date, range, (firstPath) => {
+    block.combineBasis(rule.continuation, date * columns.length, layout.stage);
+    block.column(layout.value).set(store.values.subarray(firstPath, firstPath + block.lanes));
+    block.run(rest);
   });
 }
 
 /** Sums the same products with what the store's direction would add on each path: one product of the joint problem. */
 export function sweepDirection(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
   const { columns, layout } = block.programs;
-  return sweepProducts(block, store, rule, date, range, (_, target) => {
-    block.interpreter.combine(layout.basis, columns.length, store.direction, 0, target, block.lanes);
-    block.integrands(store.direction, columns.length, layout.integrands);
-    block.addIncrement(layout.integrands, 1, target);
+  return sweepProducts(block, store, rule, date, range, () => {
+    block.combineBasis(store.direction, 0, layout.stage);
+    block.integrands(store.direction, columns.length);
+    block.addIncrement(1, layout.stage);
   });
 }
 
+/** @param writeResponse writes each path's response to the first column of the stage */
 function sweepProducts(
   block: Block,
   store: FitStore,
   rule: Rule,
   date: number,
   range: BlockRange,
-  writeResponse: (firstPath: number, target: number) => void,
+  writeResponse: (firstPath: number) => void,
 ): SweepSums {
-  const { layout, columns, integrandColumnCount, polynomialNames } = block.programs;
-  const polynomialCount = polynomialNames.length;
-  const single = layout.stage;
+  const { interpreter } = block;
+  const { layout, columns, integrandColumnCount, polynomialNames, responses } = block.programs;
+  const { basis, stage } = layout;
   const sums = emptySums(block.programs, 'products');
+  const { products, integrandProducts } = sums;
   let response = noMoments;
   forEachBlock(block, range, store.pathCount, (index, firstPath) => {
+    const { lanes } = block;
     loadPaths(block, store, index, date);
     block.advance();
     block.draw('fit', index, date, 0);
     block.polynomials();
     block.evaluate(date, rule, firstPath);
-    writeResponse(firstPath, single);
-    const values = block.column(single);
-    for (let p = 0; p < polynomialCount; p++) {
-      const polynomial = block.column(layout.polynomials + p);
-      const target = block.column(single + 1 + p);
-      for (let lane = 0; lane < block.lanes; lane++) target[lane] = values[lane]! * polynomial[lane]!;
-    }
-    const { interpreter, lanes } = block;
-    interpreter.accumulateProducts(layout.basis, columns.length, single, 1, lanes, sums.products);
-    const { integrandProducts } = sums;
+    writeResponse(firstPath);
+    block.run(responses);
+    interpreter.accumulateProducts(basis, columns.length, stage, 1, lanes, products);
     interpreter.accumulateProducts(
-      layout.basis,
+      basis,
       integrandColumnCount,
-      single + 1,
-      polynomialCount,
+      stage + 1,
+      polynomialNames.length,
       lanes,
       integrandProducts,
     );
-    response = mergeMoments(response, momentsOf(values, 0, block.lanes));
+    response = mergeMoments(response, interpreter.moments(stage, lanes));
   });
   return { ...sums, response };
+}
+
+/** Whether the sums of squares, the diagonal of the triangle, are finite: if they are, so is every value behind them. */
+function hasFiniteSquares(gram: Float64Array): boolean {
+  for (let row = 0, at = 0; at < gram.length; row++, at += row + 1) if (!Number.isFinite(gram[at])) return false;
+  return true;
 }
 
 function emptySums(
@@ -182,15 +175,11 @@ function emptySums(
 
 function pathOffset(block: Block, index: number, date: number): number {
   const { times, drivers } = block.programs;
-  return (index * (times.length - 1) + date - 1) * drivers.length * blockLanes;
+  return (index * (times.length - 1) + date - 1) * drivers.length * columnStride;
 }
 
 function storePaths(block: Block, store: FitStore, index: number, date: number): void {
-  const first = block.programs.layout.next * blockLanes;
-  store.paths.set(
-    block.columns.subarray(first, first + block.driverCount * blockLanes),
-    pathOffset(block, index, date),
-  );
+  store.paths.set(nextDrivers(block), pathOffset(block, index, date));
 }
 
 function loadPaths(block: Block, store: FitStore, index: number, date: number): void {
@@ -198,9 +187,13 @@ function loadPaths(block: Block, store: FitStore, index: number, date: number): 
     block.restart();
     return;
   }
+  const drivers = nextDrivers(block);
   const offset = pathOffset(block, index, date);
-  block.columns.set(
-    store.paths.subarray(offset, offset + block.driverCount * blockLanes),
-    block.programs.layout.next * blockLanes,
-  );
+  drivers.set(store.paths.subarray(offset, offset + drivers.length));
+}
+
+/** The columns of the drivers at `next`, as they stand in the workspace. */
+function nextDrivers(block: Block): Float64Array {
+  const first = block.programs.layout.next * columnStride;
+  return block.interpreter.columns.subarray(first, first + block.driverCount * columnStride);
 }

@@ -14,7 +14,10 @@ export interface Layout {
   readonly polynomials: number;
   /** Coefficients of the polynomials at `state`. */
   readonly integrands: number;
-  /** Free columns for the stages: integrands at `next`, responses, saved drivers. */
+  /** Continuation value at `next`, and the larger of it and the payoff. */
+  readonly hold: number;
+  readonly value: number;
+  /** Free columns for the stages: responses, saved drivers, what they follow along the paths. */
   readonly stage: number;
   /** Columns that programs use for themselves, to the end. */
   readonly scratch: number;
@@ -40,18 +43,23 @@ export function layOut(
   const variables = first.basis + columnCount;
   const polynomials = variables + variableCount;
   const integrands = polynomials + polynomialCount;
-  const stage = integrands + polynomialCount;
+  const hold = integrands + polynomialCount;
+  const stage = hold + 2;
   return {
     ...first,
     variables,
     polynomials,
     integrands,
+    hold,
+    value: hold + 1,
     stage,
     scratch: stage + stageColumnCount(driverCount, polynomialCount),
   };
 }
 
-/** Saved drivers, integrands or responses, and a few single columns. */
+/** Columns that a stage has for itself beside saved drivers and one column for each polynomial. */
+export const singleStageColumnCount = 16;
+
 function stageColumnCount(driverCount: number, polynomialCount: number): number {
-  return driverCount + polynomialCount + 8;
+  return driverCount + polynomialCount + singleStageColumnCount;
 }

@@ -31,6 +31,12 @@ export interface Programs {
   readonly variables: Program;
   /** Martingale polynomials of the innovations, given `state`. */
   readonly polynomials: Program;
+  /** From payoff and the regression's continuation value in `hold`: its proved floor put in, and the larger to `value`. */
+  readonly value: Program;
+  /** `value` less what the first column of the stages holds, to the latter. */
+  readonly rest: Program;
+  /** Response × polynomial for each polynomial, from the first column of the stages to those after it. */
+  readonly responses: Program;
   readonly drivers: readonly (Named & { readonly start: number; readonly isPositive: boolean })[];
   readonly columns: readonly Named[];
   /** The integrands use this many columns, from the first on. */
@@ -63,6 +69,7 @@ export function buildPrograms(model: CheckedModel): Programs {
     { node: amounts.terminal, column: layout.terminal },
   ];
   const { contract } = model;
+  const floor = continuationFloor(contract);
   const dates = contract.decisionDates;
   const times = dates[0] === 0 ? dates : [0, ...dates];
   const constants = new Map(model.constants.map(({ name, value }) => [name, value]));
@@ -74,15 +81,20 @@ export function buildPrograms(model: CheckedModel): Programs {
       [...amountOutputs, ...outputsFrom(layout.basis, basis.columns)],
       uniformCount,
       layout.scratch,
+      'amounts and basis',
     ),
-    amounts: compile(graph, amountOutputs, uniformCount, layout.scratch),
-    variables: compile(graph, outputsFrom(layout.variables, variables), uniformCount, layout.scratch),
+    amounts: compile(graph, amountOutputs, uniformCount, layout.scratch, 'amounts'),
+    variables: compile(graph, outputsFrom(layout.variables, variables), uniformCount, layout.scratch, 'variables'),
     polynomials: compile(
       innovations.graph,
       outputsFrom(layout.polynomials, innovations.polynomials),
       0,
       layout.scratch,
+      'polynomials',
     ),
+    value: buildValue(layout, floor),
+    rest: buildRest(layout),
+    responses: buildResponses(layout, innovations.polynomials.length),
     drivers: drivers.map(({ name, start, family, law }) => ({
       name,
       start,
@@ -96,20 +108,63 @@ export function buildPrograms(model: CheckedModel): Programs {
     times,
     discountFactors: discountFactors(contract, constants, times),
     todayIsDecisionDate: dates[0] === 0,
-    floor: continuationFloor(contract),
+    floor,
     sign: decisionSign(contract),
     payoffLine: contract.payoff.line,
   };
 }
 
+/** The same model without a martingale: the fit then is one regression for each date, and nothing is taken off payoffs. */
+export function withoutMartingale(programs: Programs): Programs {
+  const nothing = compile(new Graph(), [], 0, programs.layout.scratch, 'nothing');
+  return { ...programs, polynomialNames: [], polynomials: nothing, responses: nothing };
+}
+
 /** All programs, in the order in which a block loads them. */
-export function programList({ step, evaluate, amounts, variables, polynomials }: Programs): Program[] {
-  return [step, evaluate, amounts, variables, polynomials];
+export function programList(programs: Programs): Program[] {
+  const { step, evaluate, amounts, variables, polynomials, value, rest, responses } = programs;
+  return [step, evaluate, amounts, variables, polynomials, value, rest, responses];
 }
 
 /** Columns of the workspace that all programs together need. */
 export function workspaceColumnCount(programs: Programs): number {
   return Math.max(programs.layout.scratch, ...programList(programs).map((program) => program.columnCount));
+}
+
+/** Most numbers that go to or come from the workspace at once: sums of the normal equations, coefficients, keys. */
+export function largestNumberCount({ columns, drivers, integrandColumnCount, polynomialNames }: Programs): number {
+  const columnCount = columns.length;
+  return Math.max(
+    (columnCount * (columnCount + 1)) / 2,
+    columnCount,
+    integrandColumnCount * polynomialNames.length,
+    drivers.length,
+  );
+}
+
+function buildValue({ payoff, hold, value, scratch }: Layout, floor: 0 | null): Program {
+  const graph = new Graph();
+  const regressed = graph.column(hold);
+  const held = floor === null ? regressed : graph.apply('maximum', regressed, graph.constant(floor));
+  const larger = graph.apply('maximum', graph.column(payoff), held);
+  const floored = floor === null ? [] : [{ node: held, column: hold }];
+  return compile(graph, [...floored, { node: larger, column: value }], 0, scratch, 'value');
+}
+
+function buildRest({ value, stage, scratch }: Layout): Program {
+  const graph = new Graph();
+  const rest = graph.subtract(graph.column(value), graph.column(stage));
+  return compile(graph, [{ node: rest, column: stage }], 0, scratch, 'rest');
+}
+
+function buildResponses({ stage, polynomials, scratch }: Layout, polynomialCount: number): Program {
+  const graph = new Graph();
+  const response = graph.column(stage);
+  const outputs = Array.from({ length: polynomialCount }, (_, p) => ({
+    node: graph.multiply(response, graph.column(polynomials + p)),
+    column: stage + 1 + p,
+  }));
+  return compile(graph, outputs, 0, scratch, 'responses');
 }
 
 /** The polynomials of one step's innovations, given the drivers before it. */

@@ -28,9 +28,7 @@ export async function runOuter(
   const blocksPerParcel = Math.max(1, Math.floor(smallestParcelSteps / (dateCount * (counts.innerPointCount + 1))));
   const jobs = cutIntoParcels(counts.outerPathCount, blocksPerParcel).map((range) => ({
     kind: 'outer' as const,
-    purpose,
-    pathCount: counts.outerPathCount,
-    innerPointCount: counts.innerPointCount,
+    work: { purpose, pathCount: counts.outerPathCount, innerPointCount: counts.innerPointCount },
     range,
   }));
   const stage = purpose === 'pilot' ? 'pilot' : 'bounds';
@@ -49,8 +47,7 @@ export async function runNested(
 ): Promise<StageSums<NestedSums>> {
   const jobs = cutIntoParcels(counts.nestedOuterPathCount, 1).map((range) => ({
     kind: 'nested' as const,
-    pathCount: counts.nestedOuterPathCount,
-    innerPathCount: counts.nestedInnerPathCount,
+    work: { pathCount: counts.nestedOuterPathCount, innerPathCount: counts.nestedInnerPathCount },
     range,
   }));
   const { results, isComplete } = await runParcels(executor, jobs, signal, (done) =>

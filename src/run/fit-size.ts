@@ -1,4 +1,5 @@
-import { blockLanes } from '../program/program.js';
+import { blockLanes, columnStride } from '../program/program.js';
+import type { CompiledKernels } from '../program/wasm-module.js';
 import type { FitStore } from '../rule/fit-sweeps.js';
 import type { Programs } from '../rule/programs.js';
 import { emptyRule, sharedNumbers } from '../rule/rule.js';
@@ -18,18 +19,23 @@ export function defaultFitPathCount(programs: Programs): number {
 /** Bytes that the fit's paths and values take on shared memory. */
 export function fitStoreBytes(programs: Programs, pathCount: number): number {
   const blockCount = Math.ceil(pathCount / blockLanes);
-  const perBlock = (programs.times.length - 1) * programs.drivers.length * blockLanes + blockLanes;
+  const perBlock = (programs.times.length - 1) * programs.drivers.length * columnStride + blockLanes;
   return blockCount * perBlock * Float64Array.BYTES_PER_ELEMENT;
 }
 
 /** Opens the shared memory of a run. */
-export function openContext(programs: Programs, seed: string, pathCount: number): JobContext {
+export function openContext(
+  programs: Programs,
+  seed: string,
+  pathCount: number,
+  kernels: CompiledKernels | null,
+): JobContext {
   const blockCount = Math.ceil(pathCount / blockLanes);
   const store: FitStore = {
     pathCount,
-    paths: sharedNumbers(blockCount * (programs.times.length - 1) * programs.drivers.length * blockLanes),
+    paths: sharedNumbers(blockCount * (programs.times.length - 1) * programs.drivers.length * columnStride),
     values: sharedNumbers(blockCount * blockLanes),
     direction: sharedNumbers(programs.columns.length + programs.polynomialNames.length * programs.integrandColumnCount),
   };
-  return { programs, seed, rule: emptyRule(programs), store };
+  return { programs, seed, kernels, rule: emptyRule(programs), store };
 }

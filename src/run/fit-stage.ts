@@ -11,7 +11,7 @@ import { cutIntoParcels, runParcels, Stopped } from './parcels.js';
 const blocksPerParcel = 8;
 
 /** Fits the rule on the executor. @fails throws Stopped, and NotFinite from the paths */
-export async function runFit(
+export function runFit(
   executor: Executor,
   programs: Programs,
   rule: Rule,
@@ -19,8 +19,19 @@ export async function runFit(
   signal: AbortSignal | undefined,
   onProgress: (progress: Progress) => void,
 ): Promise<StepFit[]> {
+  return fitRule(programs, rule, store.direction, fitWorkOn(executor, programs, store, signal, onProgress));
+}
+
+/** The fit's sweeps over all paths, in parcels on the executor. */
+export function fitWorkOn(
+  executor: Executor,
+  programs: Programs,
+  store: FitStore,
+  signal: AbortSignal | undefined,
+  onProgress: (progress: Progress) => void,
+): FitWork {
   const ranges = cutIntoParcels(store.pathCount, blocksPerParcel);
-  const total = ranges.length * (1 + sweepsPerDate * (programs.times.length - 1));
+  const total = ranges.length * (1 + sweepsPerDate(programs) * (programs.times.length - 1));
   let done = 0;
   const runAll = async <J extends Job>(jobs: J[]) => {
     const { results, isComplete } = await runParcels(executor, jobs, signal, () =>
@@ -29,10 +40,9 @@ export async function runFit(
     if (!isComplete) throw new Stopped();
     return results;
   };
-  const work: FitWork = {
+  return {
     simulate: () => runAll(ranges.map((range) => ({ kind: 'simulate' as const, range }))),
     sweep: (sweep: SweepKind, date: number) =>
       runAll(ranges.map((range) => ({ kind: 'sweep' as const, sweep, date, range }))),
   };
-  return fitRule(programs, rule, store.direction, work);
 }

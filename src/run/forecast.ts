@@ -1,4 +1,4 @@
-import { blockLanes } from '../program/program.js';
+import { columnStride } from '../program/program.js';
 import type { Forecast, Plan } from '../result/record.js';
 import { sweepsPerDate } from '../rule/backward-induction.js';
 import { type Programs, workspaceColumnCount } from '../rule/programs.js';
@@ -17,7 +17,7 @@ export function forecastOf(
 ): Forecast {
   const dateCount = programs.times.length - 1;
   const columnCount = programs.columns.length;
-  const workspaceBytes = workspaceColumnCount(programs) * blockLanes * 8;
+  const workspaceBytes = workspaceColumnCount(programs) * columnStride * 8;
   const ruleBytes = (dateCount + 1) * columnCount * (1 + programs.polynomialNames.length) * 8;
   return {
     peakMemoryBytes:
@@ -27,7 +27,7 @@ export function forecastOf(
       ruleBytes,
     machineMemoryBytes,
     work: {
-      fit: counts.fitPathCount * dateCount * (1 + sweepsPerDate),
+      fit: counts.fitPathCount * dateCount * (1 + sweepsPerDate(programs)),
       bounds:
         counts.outerPathCount === null || counts.innerPointCount === null
           ? null

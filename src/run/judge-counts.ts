@@ -45,7 +45,7 @@ export function judgePlan(plan: Plan): Message[] {
   const least = [
     ['fitPathCount', 1],
     ['outerPathCount', 2],
-    ['innerPointCount', 1],
+    ['innerPointCount', upper === 'one-step' ? 1 : 0],
     ['nestedOuterPathCount', isNested ? 2 : 0],
     ['nestedInnerPathCount', isNested ? 1 : 0],
   ] as const;

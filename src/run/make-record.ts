@@ -33,6 +33,7 @@ export interface RunFindings {
   readonly isComplete: boolean;
   readonly hashOf: (text: string) => string;
   readonly versions: RunRecord['versions'];
+  readonly interpreter: RunRecord['interpreter'];
   readonly timing: RunRecord['timing'];
 }
 
@@ -44,7 +45,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   const named = (bound: Bound, method: BoundMethod): BoundEstimate => ({ ...bound, method });
   const ruled = named(boundOf(outer.lower, sign), 'rule');
   const martingales = [
-    named(boundOf(outer.upper, sign), 'one-step'),
+    ...(outer.upper.count === 0 ? [] : [named(boundOf(outer.upper, sign), 'one-step')]),
     ...(nested === null ? [] : [named(boundOf(nested.upper, sign), 'andersen-broadie')]),
     named(boundOf(outer.regressed, sign), 'regressed'),
   ];
@@ -97,6 +98,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
     advice: judgement.advice,
     passedChecks: judgement.passedChecks,
     settings,
+    interpreter: findings.interpreter,
     timing: findings.timing,
     versions: findings.versions,
   };
@@ -104,7 +106,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
 
 /** Gap of the bracket's own two bounds: path by path where both stand on the same paths. */
 function gapOf({ outer, nested }: RunFindings, method: BoundMethod): Estimate {
-  if (method === 'regressed') return estimateOf(outer.regressedGap);
+  if (method === 'regressed' || outer.upper.count === 0) return estimateOf(outer.regressedGap);
   if (method !== 'andersen-broadie' || nested === null) return estimateOf(outer.gap);
   const [upper, lower] = [estimateOf(nested.upper), estimateOf(outer.lower)];
   return estimateFrom(upper.value - lower.value, jointError(upper, lower));

@@ -2,6 +2,12 @@ import type { Message } from '../messages/message.js';
 import type { Forecast, Plan, RunRecord } from '../result/record.js';
 import type { CheckedScenario, UpperMethod } from '../scenario/model.js';
 
+/** The fast interpreter, vectors in WebAssembly, and the readable one, plain loops. */
+export const interpreterKinds = ['wasm', 'plain'] as const;
+
+/** What runs the compiled programs. */
+export type InterpreterKind = (typeof interpreterKinds)[number];
+
 /** How far a run is. */
 export interface Progress {
   readonly stage: 'fit' | 'pilot' | 'bounds' | 'nested';
@@ -30,6 +36,8 @@ export interface ValueOptions extends Overrides {
   readonly budgetSeconds?: number;
   /** Threads; 0 runs in the calling thread. Default: one for each core, at most 8. The result does not depend on it. */
   readonly workers?: number;
+  /** Which interpreter runs the programs; the result does not depend on it. Default: `wasm`, the fast one. */
+  readonly interpreter?: InterpreterKind;
   /** Ends the run early; what is finished is delivered with status `stopped`. */
   readonly signal?: AbortSignal;
   readonly onProgress?: (progress: Progress) => void;

@@ -78,7 +78,7 @@ export async function choosePlan(
       ...counts,
       lowerStandardDeviation: pilotModel.lowerStandardDeviation,
       upperStandardDeviation: pilotModel.upperStandardDeviation,
-      gap: method.upper === 'regressed' ? sums.regressedGap.mean : sums.gap.mean,
+      gap: sums.gap.count === 0 || method.upper === 'regressed' ? sums.regressedGap.mean : sums.gap.mean,
       expectedWidth: expectedWidth(pilotModel, chosen),
       wantedWidth: budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
     },

@@ -38,7 +38,12 @@ export async function valueScenario(
   const messages = judgeCounts(programs, counts, forecastOf(programs, counts, workerCount, environment.memoryBytes));
   if (messages.length > 0) return { kind: 'refused', messages };
 
-  const context = openContext(programs, scenario.model.seed, counts.fitPathCount);
+  const context = openContext(
+    programs,
+    scenario.model.seed,
+    counts.fitPathCount,
+    environment.kernels(options.interpreter),
+  );
   const executor = environment.openExecutor(context, workerCount);
   let stage: Progress['stage'] = 'fit';
   const onProgress = (progress: Progress) => {
@@ -93,6 +98,7 @@ async function runStages(
     nested,
     isComplete,
     hashOf: environment.hashOf,
+    interpreter: options.interpreter ?? 'wasm',
     versions: environment.versions,
     timing: {
       totalSeconds: seconds(started, finished),

@@ -27,8 +27,9 @@ export function readMethod(reading: Reading): Method | null {
     readCount(group, key, name, { least, most }, reading);
   const fitPathCount = count(counts, 'fit', 'method.counts.fit', mostPaths);
   const outerPathCount = count(counts, 'outer', 'method.counts.outer', mostPaths, fewestOuterPaths);
-  const innerPointCount = count(counts, 'inner', 'method.counts.inner', mostInnerPoints);
+  const innerPointCount = count(counts, 'inner', 'method.counts.inner', mostInnerPoints, 0);
   const upper = readUpper(node, reading);
+  if (innerPointCount === 0 && upper === 'one-step') refuseNoInnerPoints(counts, reading);
   const nested = under(node, 'upper');
   const nestedOuterPathCount = count(nested, 'outer', 'method.upper.outer', mostPaths, fewestOuterPaths);
   const nestedInnerPathCount = count(nested, 'inner', 'method.upper.inner', mostInnerPoints);
@@ -130,6 +131,18 @@ function refuseIdleCounts(node: TreeNode | undefined, stated: UpperMethod, readi
       evidence: { key, method: stated },
     });
   }
+}
+
+/** The one-step bound is a mean over inner points. */
+function refuseNoInnerPoints(counts: TreeNode | undefined, { findings }: Reading): void {
+  findings.add({
+    code: 'value-out-of-range',
+    at: under(counts, 'inner')!.span,
+    what: '`inner` is 0, but the upper bound `one-step` is made with inner points.',
+    why: 'Without them only the regressed martingale can be taken off the payoffs.',
+    mend: 'Write `upper: regressed` beside `counts`, or a whole number from 1 up.',
+    evidence: { inner: 0, upper: 'one-step' },
+  });
 }
 
 function badUpper(upper: string, reading: Reading): null {

@@ -1,10 +1,9 @@
 import { setImmediate } from 'node:timers/promises';
 import type { Executor } from './executor.js';
-import { createJobRunner, type JobContext } from './jobs.js';
+import type { Job, JobReply } from './jobs.js';
 
 /** Does every job in the calling thread, leaving it free between jobs so that a signal is heard. */
-export function createInProcessExecutor(context: JobContext): Executor {
-  const runJob = createJobRunner(context);
+export function createInProcessExecutor(runJob: (job: Job) => JobReply): Executor {
   return {
     workerCount: 1,
     async run(job) {

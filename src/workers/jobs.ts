@@ -1,7 +1,13 @@
-import { type NestedSums, runNestedPaths } from '../bounds/nested-paths.js';
-import { type OuterPurpose, runOuterPaths } from '../bounds/outer-paths.js';
+import { type NestedSums, type NestedWork, runNestedPaths } from '../bounds/nested-paths.js';
+import { buildNestedPrograms, type NestedPrograms, nestedProgramList } from '../bounds/nested-programs.js';
+import { type OuterWork, runOuterPaths } from '../bounds/outer-paths.js';
+import { buildOuterPrograms, type OuterPrograms, outerProgramList } from '../bounds/outer-programs.js';
 import type { OuterSums } from '../bounds/outer-sums.js';
 import type { Moments } from '../numeric/moments.js';
+import type { InterpreterMaker } from '../program/interpreter.js';
+import { createPlainInterpreter } from '../program/plain-interpreter.js';
+import { wasmInterpreters } from '../program/wasm-interpreter.js';
+import type { CompiledKernels } from '../program/wasm-module.js';
 import type { SweepKind } from '../rule/backward-induction.js';
 import { Block } from '../rule/block.js';
 import {
@@ -21,6 +27,8 @@ import type { Rule } from '../rule/rule.js';
 export interface JobContext {
   readonly programs: Programs;
   readonly seed: string;
+  /** The fast interpreter's compiled kernels; null runs the plain interpreter. */
+  readonly kernels: CompiledKernels | null;
   readonly rule: Rule;
   readonly store: FitStore;
 }
@@ -29,19 +37,8 @@ export interface JobContext {
 export type Job =
   | { readonly kind: 'simulate'; readonly range: BlockRange }
   | { readonly kind: 'sweep'; readonly sweep: SweepKind; readonly date: number; readonly range: BlockRange }
-  | {
-      readonly kind: 'outer';
-      readonly purpose: OuterPurpose;
-      readonly pathCount: number;
-      readonly innerPointCount: number;
-      readonly range: BlockRange;
-    }
-  | {
-      readonly kind: 'nested';
-      readonly pathCount: number;
-      readonly innerPathCount: number;
-      readonly range: BlockRange;
-    };
+  | { readonly kind: 'outer'; readonly work: OuterWork; readonly range: BlockRange }
+  | { readonly kind: 'nested'; readonly work: NestedWork; readonly range: BlockRange };
 
 /** Which result belongs to which job. */
 export type ResultOf<J extends Job> = J extends { kind: 'simulate' }
@@ -57,12 +54,30 @@ export type JobReply =
   | { readonly ok: true; readonly result: ResultOf<Job> }
   | { readonly ok: false; readonly notFinite: NotFinitePlace };
 
+/** A block with the programs of all stages on it. */
+interface Bench {
+  readonly block: Block;
+  readonly outer: OuterPrograms;
+  readonly nested: NestedPrograms;
+}
+
+/** Makes fast interpreters from compiled kernels, plain ones from none. */
+export function interpreterMaker(kernels: CompiledKernels | null): InterpreterMaker {
+  return kernels === null ? createPlainInterpreter : wasmInterpreters(kernels);
+}
+
 /** Makes the function that does any job of a run; the same in a thread and in the calling one. */
-export function createJobRunner(context: JobContext): (job: Job) => JobReply {
-  const block = new Block(context.programs, context.seed);
+export function createJobRunner(
+  context: JobContext,
+  makeInterpreter = interpreterMaker(context.kernels),
+): (job: Job) => JobReply {
+  const { programs, seed } = context;
+  const outer = buildOuterPrograms(programs);
+  const nested = buildNestedPrograms(programs);
+  const block = new Block(programs, seed, makeInterpreter, [...outerProgramList(outer), ...nestedProgramList(nested)]);
   return (job) => {
     try {
-      return { ok: true, result: doJob(block, context, job) };
+      return { ok: true, result: doJob({ block, outer, nested }, context, job) };
     } catch (problem) {
       if (problem instanceof NotFinite) return { ok: false, notFinite: problem.place };
       throw problem;
@@ -72,15 +87,15 @@ export function createJobRunner(context: JobContext): (job: Job) => JobReply {
 
 const sweeps = { values: sweepValues, residuals: sweepResiduals, direction: sweepDirection };
 
-function doJob(block: Block, { store, rule }: JobContext, job: Job): ResultOf<Job> {
+function doJob({ block, outer, nested }: Bench, { store, rule }: JobContext, job: Job): ResultOf<Job> {
   switch (job.kind) {
     case 'simulate':
       return simulateFit(block, store, job.range);
     case 'sweep':
       return sweeps[job.sweep](block, store, rule, job.date, job.range);
     case 'outer':
-      return runOuterPaths(block, rule, job.purpose, job.pathCount, job.innerPointCount, job.range);
+      return runOuterPaths(block, outer, rule, job.work, job.range);
     case 'nested':
-      return runNestedPaths(block, rule, job.pathCount, job.innerPathCount, job.range);
+      return runNestedPaths(block, nested, rule, job.work, job.range);
   }
 }

@@ -1,9 +1,10 @@
 import { createHash } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { availableParallelism, totalmem } from 'node:os';
+import { type CompiledKernels, compileKernels } from '../program/wasm-module.js';
 import type { Executor } from './executor.js';
 import { createInProcessExecutor } from './in-process.js';
-import type { JobContext } from './jobs.js';
+import { createJobRunner, type JobContext } from './jobs.js';
 import { createThreadExecutor } from './threads.js';
 
 /** What a run takes from the machine it is on. */
@@ -15,6 +16,8 @@ export interface Machine {
   readonly memoryBytes: number;
   readonly versions: { readonly tarry: string; readonly node: string };
   hashOf(text: string): string;
+  /** The compiled kernels of the fast interpreter; null for the plain one. */
+  kernels(interpreter: 'wasm' | 'plain' | undefined): CompiledKernels | null;
   /** Threads, or the calling thread for a count of 0. */
   openExecutor(context: JobContext, workerCount: number): Executor;
 }
@@ -28,9 +31,20 @@ export function thisMachine(): Machine {
     memoryBytes: constrained > 0 ? Math.min(constrained, totalmem()) : totalmem(),
     versions: { tarry: programVersion(), node: process.versions.node },
     hashOf: (text) => createHash('sha256').update(text).digest('hex'),
+    kernels: (interpreter = 'wasm') => (interpreter === 'wasm' ? loadKernels() : null),
     openExecutor: (context, workerCount) =>
-      workerCount === 0 ? createInProcessExecutor(context) : createThreadExecutor(context, workerCount),
+      workerCount === 0
+        ? createInProcessExecutor(createJobRunner(context))
+        : createThreadExecutor(context, workerCount),
   };
+}
+
+let loaded: CompiledKernels | undefined;
+
+/** Reads and compiles the kernels beside the built programs, once for a process. */
+export function loadKernels(): CompiledKernels {
+  loaded ??= compileKernels(readFileSync(new URL('../program/kernels.wasm', import.meta.url)));
+  return loaded;
 }
 
 /** The version of this program, from its package.json. */

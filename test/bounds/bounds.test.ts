@@ -25,7 +25,13 @@ test('two lots: the lower bound does not lie above the exact value, nor any uppe
   expect(Math.abs(standardisedError(plain, lower.mean))).toBeLessThan(limit);
   expect(plain.squares / lower.squares).toBeGreaterThan(100);
 
-  const nested = runNestedPaths(whole.block, whole.rule, 1024, 32, { firstBlock: 0, blockCount: 2 });
+  const nested = runNestedPaths(
+    whole.block,
+    whole.nested,
+    whole.rule,
+    { pathCount: 1024, innerPathCount: 32 },
+    { firstBlock: 0, blockCount: 2 },
+  );
   expect(oneSided(nested.upper)).toBeGreaterThan(-limit);
   expect(nested.upper.mean).toBeLessThan(exact * 1.008);
   // Continuing from today with the rule is what the rule is worth: two estimates on different draws.
@@ -75,9 +81,9 @@ test('control: a martingale with a mean of 0.02 for each step breaks the lower b
   const whole = await fitted(lots(), 8192);
   const { block } = whole;
   const addIncrement = block.addIncrement.bind(block);
-  block.addIncrement = (integrands, factor, target) => {
-    addIncrement(integrands, factor, target);
-    if (factor !== -1) return;
+  block.addIncrement = (sign, target) => {
+    addIncrement(sign, target);
+    if (sign !== -1) return;
     const innerValue = block.column(target);
     for (let lane = 0; lane < innerValue.length; lane++) innerValue[lane] = innerValue[lane]! + 0.02;
   };

@@ -1,5 +1,5 @@
 import { readdirSync, readFileSync } from 'node:fs';
-import { join, sep } from 'node:path';
+import { dirname, join, sep } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { expect, test } from 'vitest';
 
@@ -17,9 +17,9 @@ const table: Record<string, readonly string[]> = {
   regression: ['paths', 'program'],
   martingale: ['regression', 'paths', 'program'],
   rule: ['regression', 'martingale', 'paths', 'clauses', 'program'],
-  bounds: ['rule', 'martingale', 'paths'],
+  bounds: ['rule', 'martingale', 'paths', 'program'],
   result: [],
-  workers: ['bounds', 'rule'],
+  workers: ['bounds', 'rule', 'program'],
   store: ['result'],
   run: ['program', 'scenario', 'rule', 'bounds', 'workers', 'result'],
   report: ['result'],
@@ -48,7 +48,7 @@ function importsOf(file: string): Import[] {
   const room = file.includes(sep) ? file.split(sep)[0]! : 'index';
   return [...text.matchAll(/^(?:import|export)\s+(type\s+)?[^'";]*?from\s+'(\.{1,2}\/[^']+)'/gm)].map(
     ([, type, path]) => {
-      const parts = join(room === 'index' ? '' : room, path!).split(sep);
+      const parts = join(dirname(file), path!).split(sep);
       return { file, room, target: parts.length > 1 ? parts[0]! : 'index', isType: type !== undefined };
     },
   );

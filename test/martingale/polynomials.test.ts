@@ -1,6 +1,8 @@
 import { expect, test } from 'vitest';
 import { type Moments, mergeMoments, momentsOf, noMoments } from '#built/numeric/moments.js';
+import { wasmInterpreters } from '#built/program/wasm-interpreter.js';
 import { Block } from '#built/rule/block.js';
+import { loadKernels } from '#built/workers/machine.js';
 import { programsOf } from '../fitted.js';
 import { lots } from '../scenario-texts.js';
 import { limit, standardisedError } from '../statistics.js';
@@ -16,7 +18,7 @@ function polynomialMoments(
   weighs: 'state' | 'next state',
 ): { first: Moments[]; weighted: Moments[]; squares: Moments[] } {
   const { programs, seed } = programsOf(text);
-  const block = new Block(programs, seed);
+  const block = new Block(programs, seed, wasmInterpreters(loadKernels()));
   const { layout, polynomialNames } = programs;
   const count = polynomialNames.length;
   const empty = () => new Array<Moments>(count).fill(noMoments);

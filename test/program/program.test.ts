@@ -1,11 +1,12 @@
 import fc from 'fast-check';
-import { expect, test } from 'vitest';
+import { describe, expect, test } from 'vitest';
 import { compile, type Output } from '#built/program/compile.js';
 import { Graph, type Node } from '#built/program/graph.js';
+import type { InterpreterMaker } from '#built/program/interpreter.js';
 import { type Operation, operations } from '#built/program/operations.js';
-import { createPlainInterpreter } from '#built/program/plain-interpreter.js';
-import { blockLanes } from '#built/program/program.js';
+import { columnStride } from '#built/program/program.js';
 import { applyScalar } from '#built/program/scalar.js';
+import { interpreterKinds, plainKeys } from './interpreters.js';
 
 const inputCount = 3;
 const uniforms = [1.3, -0.4];
@@ -44,45 +45,55 @@ function evaluate(graph: Graph, node: Node, inputs: readonly number[]): number {
   return applyScalar(entry.operation, a, b, c);
 }
 
-function run(graph: Graph, outputs: readonly Output[]): { before: Float64Array; after: Float64Array } {
+function run(
+  makeInterpreter: InterpreterMaker,
+  graph: Graph,
+  outputs: readonly Output[],
+): { before: Float64Array; after: Float64Array } {
   const program = compile(graph, outputs, uniforms.length, scratch);
-  const interpreter = createPlainInterpreter(program.columnCount, program.scalars.length);
-  const loaded = interpreter.load(program);
+  const interpreter = makeInterpreter({
+    columnCount: program.columnCount,
+    programs: [program],
+    numberCount: 2 * inputCount,
+  });
+  const loaded = interpreter.programs[0]!;
   loaded.uniforms.set(uniforms);
-  for (let i = 0; i < inputCount; i++) interpreter.drawNormals({ low: i, high: 7 }, 0, 0, 0, i, lanes);
+  interpreter.drawNormals(plainKeys(inputCount, 7), 0, 0, 0, 0, lanes);
   const before = interpreter.columns.slice();
   interpreter.run(loaded, lanes);
   return { before, after: interpreter.columns };
 }
 
-test('a compiled program computes what its graph means, bit for bit, outputs over inputs included', () => {
-  fc.assert(
-    fc.property(recipe, (steps) => {
-      const graph = new Graph();
-      const outputs = build(graph, steps)
-        .slice(-12)
-        .map((node, i) => ({ node, column: i < 2 ? i : 5 + i }));
-      const { before, after } = run(graph, outputs);
-      for (let lane = 0; lane < lanes; lane += 9) {
-        const inputs = Array.from({ length: inputCount }, (_, i) => before[i * blockLanes + lane]!);
-        for (const { node, column } of outputs) {
-          expect(after[column * blockLanes + lane]).toBe(evaluate(graph, node, inputs));
+describe.each(interpreterKinds)('%s interpreter', (_, makeInterpreter) => {
+  test('a compiled program computes what its graph means, bit for bit, outputs over inputs included', () => {
+    fc.assert(
+      fc.property(recipe, (steps) => {
+        const graph = new Graph();
+        const outputs = build(graph, steps)
+          .slice(-12)
+          .map((node, i) => ({ node, column: i < 2 ? i : 5 + i }));
+        const { before, after } = run(makeInterpreter, graph, outputs);
+        for (let lane = 0; lane < lanes; lane += 9) {
+          const inputs = Array.from({ length: inputCount }, (_, i) => before[i * columnStride + lane]!);
+          for (const { node, column } of outputs) {
+            expect(after[column * columnStride + lane]).toBe(evaluate(graph, node, inputs));
+          }
         }
-      }
-    }),
-    { numRuns: 300, seed: 20261201 },
-  );
-});
+      }),
+      { numRuns: 300, seed: 20261201 },
+    );
+  });
 
-test('two outputs may trade places with the inputs they read', () => {
-  const graph = new Graph();
-  const [a, b] = [graph.column(0), graph.column(1)];
-  const { before, after } = run(graph, [
-    { node: b, column: 0 },
-    { node: a, column: 1 },
-  ]);
-  expect(after[3]).toBe(before[blockLanes + 3]);
-  expect(after[blockLanes + 3]).toBe(before[3]);
+  test('two outputs may trade places with the inputs they read', () => {
+    const graph = new Graph();
+    const [a, b] = [graph.column(0), graph.column(1)];
+    const { before, after } = run(makeInterpreter, graph, [
+      { node: b, column: 0 },
+      { node: a, column: 1 },
+    ]);
+    expect(after[3]).toBe(before[columnStride + 3]);
+    expect(after[columnStride + 3]).toBe(before[3]);
+  });
 });
 
 test('equal parts are computed once and constants beforehand', () => {
@@ -97,14 +108,4 @@ test('equal parts are computed once and constants beforehand', () => {
   const program = compile(graph, [{ node, column: 4 }], 1, scratch);
   expect(program.laneCode.length / 5).toBe(3);
   expect(program.uniformCode.length / 5).toBe(1);
-});
-
-test('lanes beyond those in use keep what they held', () => {
-  const graph = new Graph();
-  const program = compile(graph, [{ node: graph.add(graph.column(0), graph.constant(1)), column: 1 }], 0, scratch);
-  const interpreter = createPlainInterpreter(program.columnCount, program.scalars.length);
-  interpreter.columns.fill(-9);
-  interpreter.run(interpreter.load(program), 10);
-  expect(interpreter.columns[blockLanes + 9]).toBe(-8);
-  expect(interpreter.columns[blockLanes + 10]).toBe(-9);
 });

@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import { type Purpose, streamKeys } from '#built/paths/stream-keys.js';
 import { drawUniforms, philox, type StreamKey } from '#built/program/stream.js';
 
 const hex = (words: Uint32Array) => [...words].map((word) => word.toString(16).padStart(8, '0')).join(' ');
@@ -104,13 +105,37 @@ test('the same check catches a stream that is used twice and one that is off by 
   expect(worstStandardError(draws.map((u) => u * 0.99))).toBeGreaterThan(4.5);
 });
 
-test('no starting state repeats over a million streams', () => {
-  const seen = new Set<bigint>();
+const purposes: Purpose[] = ['fit', 'pilot', 'pilot inner', 'outer', 'inner', 'nested outer', 'nested inner'];
+const names = Array.from({ length: 20 }, (_, i) => `lot[${i + 1}]`);
+
+/** Count of different starting states over blocks, dates, replicates and strands of some keys; by their first 64 bits. */
+function differentStates(keys: Int32Array): { count: number; of: number } {
+  const [blockCount, dateCount, replicateCount, strandCount] = [16, 14, 8, 4];
+  const states = new BigUint64Array((keys.length / 2) * blockCount * dateCount * replicateCount * strandCount);
   const words = new Uint32Array(4);
-  const wide = new BigUint64Array(words.buffer);
-  for (let i = 0; i < 1_000_000; i++) {
-    philox({ low: 3, high: 4 }, i & 1023, i >>> 10, 0, 0, words);
-    seen.add(wide[0]! ^ (wide[1]! << 1n));
-  }
-  expect(seen.size).toBe(1_000_000);
+  const firstBits = new BigUint64Array(words.buffer, 0, 1);
+  let at = 0;
+  for (let key = 0; key < keys.length; key += 2)
+    for (let block = 0; block < blockCount; block++)
+      for (let date = 0; date < dateCount; date++)
+        for (let replicate = 0; replicate < replicateCount; replicate++)
+          for (let strand = 0; strand < strandCount; strand++) {
+            philox({ low: keys[key]!, high: keys[key + 1]! }, block, date, replicate, strand, words);
+            states[at++] = firstBits[0]!;
+          }
+  states.sort();
+  return { count: states.filter((state, i) => state !== states[i - 1]).length, of: states.length };
+}
+
+// Among a million random numbers of 64 bits two are equal once in 37 million times.
+test('no starting state repeats over a million strands of all purposes and twenty names', () => {
+  const keys = Int32Array.from(purposes.flatMap((purpose) => [...streamKeys('oak', purpose, names)]));
+  const { count, of } = differentStates(keys);
+  expect(of).toBeGreaterThan(1_000_000);
+  expect(count).toBe(of);
+});
+
+test('control: a name that is used twice repeats states', () => {
+  const { count, of } = differentStates(streamKeys('oak', 'fit', ['lot[1]', 'lot[2]', 'lot[1]']));
+  expect(count).toBe((of * 2) / 3);
 });

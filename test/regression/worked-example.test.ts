@@ -1,6 +1,6 @@
 import { expect, test } from 'vitest';
 import { createPlainInterpreter } from '#built/program/plain-interpreter.js';
-import { blockLanes } from '#built/program/program.js';
+import { columnStride } from '#built/program/program.js';
 import { compressColumns, solveResponses } from '#built/regression/solve.js';
 
 /**
@@ -22,10 +22,10 @@ const discount = Math.exp(-0.06);
 
 /** Regresses on 1, X, X² with the project's own normal equations and solver. */
 function regress(states: readonly number[], responses: readonly number[]): Float64Array {
-  const interpreter = createPlainInterpreter(4, 0);
+  const interpreter = createPlainInterpreter({ columnCount: 4, programs: [], numberCount: 0 });
   states.forEach((x, lane) => {
     [1, x, x * x, responses[lane]!].forEach((value, column) => {
-      interpreter.columns[column * blockLanes + lane] = value;
+      interpreter.columns[column * columnStride + lane] = value;
     });
   });
   const gram = new Float64Array(6);

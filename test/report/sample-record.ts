@@ -79,6 +79,7 @@ export const sampleRecord: RunRecord = {
     { name: 'constants.spread', value: '0.25', origin: { kind: 'command line' } },
     { name: 'contract.payoff', value: 'max(0, largest(grove) - 100)', origin: { kind: 'line', line: 14 } },
   ],
+  interpreter: 'wasm',
   timing: { totalSeconds: 12.34, fitSeconds: 3.2, pilotSeconds: 1.1, boundsSeconds: 7.9 },
   versions: { tarry: '0.1.0', node: '20.19.0' },
 };

@@ -1,4 +1,5 @@
 import { expect, test } from 'vitest';
+import type { ValueOptions } from '#built/run/options.js';
 import type { Job, JobReply } from '#built/workers/jobs.js';
 import { createThreadExecutor } from '#built/workers/threads.js';
 import { fitted } from '../fitted.js';
@@ -9,22 +10,21 @@ const scenario = lots({
   method: ['counts: { fit: 9000, outer: 1300, inner: 8 }', 'upper: { method: andersen-broadie, outer: 700, inner: 4 }'],
 });
 
-test('the calling thread and 1, 2 and 5 workers give the same bytes', async () => {
-  const essence = async (workers: number) => {
-    const { lower, upper, uppers, bracket95, gap, dates } = await recordOf(scenario, { workers });
+test('the calling thread, 1, 2 and 5 workers, and the plain interpreter give the same bytes', async () => {
+  const essence = async (options: ValueOptions) => {
+    const { lower, upper, uppers, bracket95, gap, dates } = await recordOf(scenario, options);
     return JSON.stringify({ lower, upper, uppers, bracket95, gap, dates });
   };
-  const inProcess = await essence(0);
-  for (const workers of [1, 2, 5]) expect(await essence(workers)).toBe(inProcess);
+  const inProcess = await essence({ workers: 0 });
+  for (const workers of [1, 2, 5]) expect(await essence({ workers })).toBe(inProcess);
+  for (const workers of [0, 2]) expect(await essence({ workers, interpreter: 'plain' })).toBe(inProcess);
 });
 
 test('a thread that dies is replaced and its job done again, with the same result', async () => {
   const { context, run } = await fitted(lots(), 4096);
   const job: Job = {
     kind: 'outer',
-    purpose: 'outer',
-    pathCount: 512,
-    innerPointCount: 96,
+    work: { purpose: 'outer', pathCount: 512, innerPointCount: 96 },
     range: { firstBlock: 0, blockCount: 1 },
   };
   const expected = run(job);

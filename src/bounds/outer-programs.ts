@@ -1,0 +1,151 @@
+import { compile, type Output } from '../program/compile.js';
+import { Graph, type Node } from '../program/graph.js';
+import type { Program } from '../program/program.js';
+import type { Programs } from '../rule/programs.js';
+
+/** Columns of the stages in which outer paths keep what they carry along. */
+export interface OuterColumns {
+  /** The regressed martingale, and its increment over the step. */
+  readonly regressed: number;
+  readonly regressedStep: number;
+  /** The one-step martingale, and the one made with the first half of the inner points. */
+  readonly martingale: number;
+  readonly halfMartingale: number;
+  /** Sums of the fitted value over the inner points, over all and over the first half. */
+  readonly innerSum: number;
+  readonly innerHalfSum: number;
+  /** What the rule brings, with the martingale taken off and without. */
+  readonly lower: number;
+  readonly plain: number;
+  /** Largest payoff less martingale so far, with each of the three martingales. */
+  readonly upper: number;
+  readonly halfUpper: number;
+  readonly regressedUpper: number;
+  /** 1 while the rule has not exercised. */
+  readonly running: number;
+  /** 1 where the rule exercises at the date in work, and where it ends without having used the right. */
+  readonly exercised: number;
+  readonly unused: number;
+}
+
+/** Which martingale is taken off: the one-step one needs inner points. */
+export type OuterKind = 'one-step' | 'regressed';
+
+/** What outer paths do at a date, lane by lane. */
+export interface OuterPrograms {
+  readonly columns: OuterColumns;
+  /** Adds the fitted value of one inner point to `innerSum`. */
+  readonly addInner: Program;
+  /** Moves the martingales of a kind by one step; uniforms as `moveUniforms` says. */
+  readonly move: Readonly<Record<OuterKind, Program>>;
+  /** Lets the rule choose and hindsight note what the date would have brought. */
+  readonly choose: Readonly<Record<OuterKind, Program>>;
+  readonly chooseLast: Readonly<Record<OuterKind, Program>>;
+}
+
+/** Uniform inputs of the one-step `move`: 1 / inner points, 1 / half of them. */
+export const moveUniforms = { inversePoints: 0, inverseHalfPoints: 1, count: 2 } as const;
+
+/** Writes the programs of the outer paths for a model. */
+export function buildOuterPrograms(programs: Programs): OuterPrograms {
+  const { stage } = programs.layout;
+  const columns: OuterColumns = {
+    regressed: stage,
+    regressedStep: stage + 1,
+    martingale: stage + 2,
+    halfMartingale: stage + 3,
+    innerSum: stage + 4,
+    innerHalfSum: stage + 5,
+    lower: stage + 6,
+    plain: stage + 7,
+    upper: stage + 8,
+    halfUpper: stage + 9,
+    regressedUpper: stage + 10,
+    running: stage + 11,
+    exercised: stage + 12,
+    unused: stage + 13,
+  };
+  return {
+    columns,
+    addInner: buildAddInner(programs, columns),
+    move: {
+      'one-step': buildMove(programs, columns, 'one-step'),
+      regressed: buildMove(programs, columns, 'regressed'),
+    },
+    choose: {
+      'one-step': buildChoose(programs, columns, 'one-step', false),
+      regressed: buildChoose(programs, columns, 'regressed', false),
+    },
+    chooseLast: {
+      'one-step': buildChoose(programs, columns, 'one-step', true),
+      regressed: buildChoose(programs, columns, 'regressed', true),
+    },
+  };
+}
+
+/** All programs, for the block that is to run them. */
+export function outerProgramList({ addInner, move, choose, chooseLast }: OuterPrograms): Program[] {
+  return [addInner, ...[move, choose, chooseLast].flatMap((byKind) => Object.values(byKind))];
+}
+
+function buildAddInner({ layout }: Programs, { innerSum }: OuterColumns): Program {
+  const graph = new Graph();
+  const sum = graph.add(graph.column(innerSum), graph.column(layout.value));
+  return compile(graph, [{ node: sum, column: innerSum }], 0, layout.scratch, 'sum of inner points');
+}
+
+function buildMove({ layout }: Programs, columns: OuterColumns, kind: OuterKind): Program {
+  const graph = new Graph();
+  const column = (index: number) => graph.column(index);
+  const outputs: Output[] = [
+    { node: graph.add(column(columns.regressed), column(columns.regressedStep)), column: columns.regressed },
+  ];
+  if (kind === 'one-step') {
+    const moved = (martingale: number, innerSum: number, uniform: number) => {
+      const mean = graph.multiply(column(innerSum), graph.uniform(uniform));
+      const increment = graph.subtract(column(layout.value), mean);
+      outputs.push({ node: graph.add(column(martingale), increment), column: martingale });
+    };
+    moved(columns.martingale, columns.innerSum, moveUniforms.inversePoints);
+    moved(columns.halfMartingale, columns.innerHalfSum, moveUniforms.inverseHalfPoints);
+  }
+  return compile(graph, outputs, moveUniforms.count, layout.scratch, 'move of martingales');
+}
+
+/**
+ * What happens at a date on a path: hindsight's maxima take the amount in, and a running path on which the rule
+ * exercises takes it as its result. On the last date every running path ends; it ends unused if doing nothing, or the
+ * floor, is what it takes.
+ */
+function buildChoose({ layout, floor }: Programs, columns: OuterColumns, kind: OuterKind, isLast: boolean): Program {
+  const graph = new Graph();
+  const column = (index: number) => graph.column(index);
+  const outputs: Output[] = [];
+  const amount = column(isLast ? layout.terminal : layout.payoff);
+  const note = (upper: number, martingale: number): Node => {
+    const net = graph.subtract(amount, column(martingale));
+    outputs.push({ node: graph.apply('maximum', column(upper), net), column: upper });
+    return net;
+  };
+  const regressedNet = note(columns.regressedUpper, columns.regressed);
+  let net = regressedNet;
+  if (kind === 'one-step') {
+    net = note(columns.upper, columns.martingale);
+    note(columns.halfUpper, columns.halfMartingale);
+  }
+  const running = column(columns.running);
+  const exercises = isLast ? running : graph.multiply(running, graph.apply('less', column(layout.hold), amount));
+  outputs.push({ node: graph.apply('select', exercises, net, column(columns.lower)), column: columns.lower });
+  outputs.push({ node: graph.apply('select', exercises, amount, column(columns.plain)), column: columns.plain });
+  if (isLast) {
+    const isIdle = graph.apply('less', column(layout.payoff), amount);
+    const isWorthless = floor === null ? graph.constant(0) : graph.apply('lessOrEqual', amount, graph.constant(floor));
+    const unused = graph.multiply(running, graph.apply('maximum', isIdle, isWorthless));
+    outputs.push({ node: unused, column: columns.unused });
+    outputs.push({ node: graph.subtract(running, unused), column: columns.exercised });
+  } else {
+    outputs.push({ node: exercises, column: columns.exercised });
+    outputs.push({ node: graph.subtract(running, exercises), column: columns.running });
+  }
+  return compile(graph, outputs, 0, layout.scratch, 'choice');
+}
