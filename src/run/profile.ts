@@ -1,0 +1,57 @@
+import { type KernelTime, timeInterpreters } from '../program/timed-interpreter.js';
+import { createInProcessExecutor } from '../workers/in-process.js';
+import { createJobRunner, interpreterMaker } from '../workers/jobs.js';
+import { runNested, runOuter } from './bounds-stage.js';
+import { countsBeforePilot } from './counts.js';
+import type { Environment } from './environment.js';
+import { openContext } from './fit-size.js';
+import { runFit } from './fit-stage.js';
+import { choosePlan, fixedPlan } from './pilot-stage.js';
+import { prepare } from './prepare.js';
+
+/** Where the time of one stage goes. */
+export interface StageProfile {
+  readonly stage: 'fit' | 'pilot' | 'bounds';
+  readonly seconds: number;
+  /** The rest of the stage is work outside the kernels. */
+  readonly kernels: readonly (KernelTime & { readonly share: number; readonly nsPerLane: number | null })[];
+}
+
+/**
+ * Runs a scenario in the calling thread with a clock around every kernel.
+ *
+ * @fails throws when the scenario has mistakes
+ */
+export async function profileScenario(source: string, environment: Environment): Promise<StageProfile[]> {
+  const outcome = prepare(source, {});
+  if (outcome.kind === 'refused') throw new Error(outcome.messages.map(({ what }) => what).join(' '));
+  const { scenario, programs } = outcome.prepared;
+  const { now } = environment;
+  const counts = countsBeforePilot(programs, scenario.model.method);
+  const context = openContext(programs, scenario.model.seed, counts.fitPathCount, environment.kernels('wasm'));
+  const { make, take } = timeInterpreters(interpreterMaker(context.kernels), now);
+  const executor = createInProcessExecutor(createJobRunner(context, make));
+  const options = { onProgress: () => {} };
+  const profiles: StageProfile[] = [];
+  const staged = async <T>(stage: StageProfile['stage'], work: () => Promise<T>): Promise<T> => {
+    const started = now();
+    const result = await work();
+    const milliseconds = now() - started;
+    const kernels = take().map((time) => ({
+      ...time,
+      share: time.milliseconds / milliseconds,
+      nsPerLane: time.laneCount === 0 ? null : (time.milliseconds * 1e6) / time.laneCount,
+    }));
+    profiles.push({ stage, seconds: milliseconds / 1000, kernels });
+    return result;
+  };
+  await staged('fit', () => runFit(executor, programs, context.rule, context.store, undefined, () => {}));
+  const { plan } =
+    fixedPlan(scenario, options, programs) ??
+    (await staged('pilot', () => choosePlan(executor, scenario, programs, options, environment, now())));
+  await staged('bounds', async () => {
+    await runOuter(executor, programs, 'outer', plan, undefined, () => {});
+    if (plan.nestedOuterPathCount > 0) await runNested(executor, plan, undefined, () => {});
+  });
+  return profiles;
+}
