@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
+import type { InterpreterKind } from '#built/run/options.js';
 import { recordOf } from './run-value.js';
 
 /** What the shipped scenarios are known to be worth, and how narrow their brackets must be with default settings. */
@@ -23,6 +24,25 @@ test.each(known)(
     expect(advice).toEqual([]);
   },
 );
+
+test.each(known)('$file: the two interpreters give the same record, digit for digit', async ({ file }) => {
+  const text = readFileSync(new URL(`../scenarios/${file}`, import.meta.url), 'utf8');
+  const plan = {
+    fitPathCount: 1300,
+    outerPathCount: 130,
+    innerPointCount: 3,
+    nestedOuterPathCount: 65,
+    nestedInnerPathCount: 2,
+    upper: 'andersen-broadie',
+  } as const;
+  const essence = async (interpreter: InterpreterKind) => {
+    const { timing, interpreter: used, ...figures } = await recordOf(text, { plan, interpreter });
+    expect(used).toBe(interpreter);
+    expect(timing.totalSeconds).toBeGreaterThan(0);
+    return JSON.stringify(figures);
+  };
+  expect(await essence('wasm')).toBe(await essence('plain'));
+});
 
 test('the nested upper bound makes the bracket of the two lots when it is asked for', async () => {
   const text = readFileSync(new URL('../scenarios/01-two-lots.yaml', import.meta.url), 'utf8');

@@ -91,9 +91,12 @@ function wideGap({ gap, lower, plan, basisIsAutomatic }: Measures): Finding {
     doubt: advice('wide-gap', {
       what: text,
       why: 'The gap is what the fitted rule and martingale miss. More outer paths do not close it.',
-      mend: basisIsAutomatic
-        ? `Raise \`counts: { fit: … }\` under method above ${paths(plan.fitPathCount)}, or try \`upper: andersen-broadie\`.`
-        : 'Use `basis: auto`, or add columns that tell when holding is worth more.',
+      mend:
+        plan.innerPointCount === 0
+          ? 'Leave `inner` out of `counts`, so that the one-step martingale is taken off.'
+          : basisIsAutomatic
+            ? `Raise \`counts: { fit: … }\` under method above ${paths(plan.fitPathCount)}, or try \`upper: andersen-broadie\`.`
+            : 'Use `basis: auto`, or add columns that tell when holding is worth more.',
       evidence: { gap: gap.value, share },
     }),
   };

@@ -5,9 +5,11 @@ import type { Job, JobContext, JobReply } from './jobs.js';
 /** Times that one job is tried when the thread under it dies. */
 const largestTryCount = 5;
 
-/** A pool of threads; gives access to them, so that a test can end one. */
+/** A pool of threads; gives access to them, so that a test can end one and see that it mattered. */
 export interface ThreadExecutor extends Executor {
   readonly pool: Piscina;
+  /** Jobs that were begun again because their thread died. */
+  readonly retryCount: number;
 }
 
 /**
@@ -26,15 +28,20 @@ export function createThreadExecutor(context: JobContext, workerCount: number): 
   });
   // A thread that dies without a job is replaced by the pool; there is nothing to do again.
   pool.on('error', () => {});
+  let retryCount = 0;
   return {
     pool,
     workerCount,
+    get retryCount() {
+      return retryCount;
+    },
     async run(job: Job): Promise<JobReply> {
       for (let attempt = 1; ; attempt++) {
         try {
           return (await pool.run(job)) as JobReply;
         } catch (problem) {
           if (!isThreadDeath(problem) || attempt === largestTryCount) throw problem;
+          retryCount++;
         }
       }
     },
