@@ -1,12 +1,20 @@
 import { checkScenario } from './run/check.js';
-import type { CheckOutcome, Overrides, ValueOptions, ValueOutcome } from './run/options.js';
+import type { CheckOptions, CheckOutcome, ValueOptions, ValueOutcome } from './run/options.js';
 import { valueScenario } from './run/value.js';
 import { thisMachine } from './workers/machine.js';
 
 export type { Message, Place, Severity } from './messages/message.js';
 export { renderMessages } from './messages/render.js';
-export type { BoundEstimate, Estimate, Forecast, Plan, RunRecord } from './result/record.js';
-export type { CheckOutcome, InterpreterKind, Overrides, Progress, ValueOptions, ValueOutcome } from './run/options.js';
+export type { BoundEstimate, Estimate, Forecast, PathsFinding, Plan, RunRecord } from './result/record.js';
+export type {
+  CheckOptions,
+  CheckOutcome,
+  InterpreterKind,
+  Overrides,
+  Progress,
+  ValueOptions,
+  ValueOutcome,
+} from './run/options.js';
 export { interpreterKinds } from './run/options.js';
 export type { CheckedScenario, Setting } from './scenario/model.js';
 export { upperMethods } from './scenario/upper-methods.js';
@@ -28,6 +36,6 @@ export function value(scenario: string | object, options: ValueOptions = {}): Pr
 }
 
 /** Checks a scenario, echoes its settings and forecasts memory and work, without drawing a path. */
-export async function check(scenario: string | object, options: Overrides = {}): Promise<CheckOutcome> {
+export async function check(scenario: string | object, options: CheckOptions = {}): Promise<CheckOutcome> {
   return checkScenario(scenario, options, thisMachine());
 }

@@ -1,6 +1,6 @@
 import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
-import { type BlockRange, forEachBlock } from '../rule/fit-sweeps.js';
+import { type BlockRange, forEachBlock } from '../rule/fit-store.js';
 import type { Rule } from '../rule/rule.js';
 import type { NestedPrograms } from './nested-programs.js';
 

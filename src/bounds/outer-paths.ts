@@ -1,6 +1,6 @@
 import { noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
-import { type BlockRange, forEachBlock } from '../rule/fit-sweeps.js';
+import { type BlockRange, forEachBlock } from '../rule/fit-store.js';
 import type { Rule } from '../rule/rule.js';
 import { moveUniforms, type OuterKind, type OuterPrograms } from './outer-programs.js';
 import { mergeOuterSums, noOuterSums, type OuterSums } from './outer-sums.js';

@@ -11,8 +11,10 @@ export type Parsed<T> = { readonly value: T } | { readonly mistake: Message };
 type UpperMethod = NonNullable<Overrides['upper']>;
 
 const MOST_WORKERS = 512;
+const MOST_BYTES = 1e15;
 const SECONDS_PER: Readonly<Record<string, number>> = { s: 1, m: 60, h: 3600 };
 const MOST_SECONDS = 7 * 24 * 3600;
+const BYTES_PER: Readonly<Record<string, number>> = { KB: 1e3, MB: 1e6, GB: 1e9, TB: 1e12 };
 const POSITIVE_NUMBER = /^(\d+(\.\d*)?|\.\d+)(e[+-]?\d+)?$/i;
 
 function wrong(what: string, why: string, mend: string, evidence: Record<string, unknown>): { mistake: Message } {
@@ -82,6 +84,26 @@ export function parseBudget(text: string): Parsed<number> {
     return wrong(`--budget ${text} is out of range.`, 'A run can be planned for up to seven days.', mend, { seconds });
   }
   return { value: seconds };
+}
+
+/** Reads `--fit-memory`: a number with `KB`, `MB`, `GB` or `TB` behind it, powers of ten, as bytes. */
+export function parseFitMemory(text: string): Parsed<number> {
+  const found = /^(.*?)\s*([kmgt]b)?$/i.exec(text.trim());
+  const digits = found?.[1] ?? '';
+  const unit = found?.[2]?.toUpperCase();
+  const mend = 'Write --fit-memory 256MB or --fit-memory 1GB.';
+  if (!POSITIVE_NUMBER.test(digits) || !(Number(digits) > 0)) {
+    const why = 'The paths of the fit may take so much memory; the others are computed again.';
+    return wrong(`--fit-memory ${text} is no amount of memory.`, why, mend, { text });
+  }
+  if (unit === undefined) {
+    return wrong(`--fit-memory ${text} has no unit.`, 'It could mean bytes or megabytes.', mend, { text });
+  }
+  const bytes = Number(digits) * BYTES_PER[unit]!;
+  if (!(bytes <= MOST_BYTES)) {
+    return wrong(`--fit-memory ${text} is out of range.`, 'No machine has so much memory.', mend, { bytes });
+  }
+  return { value: bytes };
 }
 
 /** Reads `--workers`: how many threads; 0 computes without any. */

@@ -11,8 +11,8 @@ const EXIT_CODES = `
 Exit codes:
   0  done
   1  mistake in the scenario or in data
-  2  mistake on the command line, or in what --with, --seed, --width, --upper
-     or --budget ask of the scenario
+  2  mistake on the command line, or in what --with, --seed, --width, --upper,
+     --budget or --fit-memory ask of the scenario
   3  stopped early; what was finished is delivered
   4  a defect of this program
   5  finished, but advice was raised and --strict was given`;
@@ -31,6 +31,7 @@ function scenarioCommand(program: Command, name: string, summary: string): Comma
     .option('--with <NAME=EXPRESSION>', 'give a constant another value (may be repeated)', gather)
     .option('--seed <TEXT>', 'draw other random numbers: any text')
     .option('--width <WIDTH>', 'wanted width of the bracket: 0.1% of the value, or 0.02 in money')
+    .option('--fit-memory <SIZE>', 'memory for the paths of the fit, 256MB or 1GB; the result does not depend on it')
     .option('--json', 'print one JSON document on standard output and nothing else there');
 }
 

@@ -85,6 +85,7 @@ const catalogue = {
   // Raised by the numerical stages: mistakes
   'not-finite': { severity: 'mistake', title: 'A path left the finite numbers' },
   'memory-beyond-machine': { severity: 'mistake', title: 'The run needs more memory than the machine has' },
+  'fit-memory-too-small': { severity: 'mistake', title: 'The paths of the fit need more memory than they may take' },
   'fewer-paths-than-columns': { severity: 'mistake', title: 'A regression needs more paths than columns' },
   'plan-does-not-fit': { severity: 'mistake', title: 'The replayed record holds no plan for this scenario' },
   defect: { severity: 'mistake', title: 'A defect of this program' },

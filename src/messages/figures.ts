@@ -23,3 +23,17 @@ export function memory(bytes: number): string {
   const shown = unit === 0 ? Math.round(amount) : Number(amount.toPrecision(3));
   return `${shown.toLocaleString('en-US')} ${units[unit]}`;
 }
+
+/**
+ * An amount of memory as the command line takes it, rounded up, so that what is given is enough.
+ *
+ * @example memoryToGive(12_345_678) // '12.4MB'
+ */
+export function memoryToGive(bytes: number): string {
+  const [unit, size] = bytes < 1e6 ? ['KB', 1e3] : bytes < 1e9 ? ['MB', 1e6] : ['GB', 1e9];
+  const amount = bytes / size;
+  const rounded = Number(amount.toPrecision(3));
+  // One more in the third digit where rounding went down.
+  const step = Number(`1e${Math.floor(Math.log10(amount)) - 2}`);
+  return `${rounded >= amount ? rounded : Number((rounded + step).toPrecision(3))}${unit}`;
+}

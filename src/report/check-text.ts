@@ -1,6 +1,7 @@
 import { printable } from '../messages/printable.js';
 import type { Forecast, RunRecord } from '../result/record.js';
 import { counted, memory, roughCount } from './numbers.js';
+import { pathsSentence } from './paths-text.js';
 import { paragraph, wrapWords } from './prose.js';
 import { plainStyle, type Style } from './style.js';
 import { layOut } from './table.js';
@@ -65,7 +66,7 @@ function forecastText(forecast: Forecast, width: number, style: Style): string {
     style,
   );
   const meaning = 'A path-date is one path moved by one date, with its regression columns.';
-  return `${table}\n\n${style('quiet', paragraph(meaning, width))}`;
+  return `${table}\n\n${paragraph(pathsSentence(forecast.paths), width)}\n${style('quiet', paragraph(meaning, width))}`;
 }
 
 /** A scenario without mistakes as text: every setting with its origin, what a run will need, and advice. */

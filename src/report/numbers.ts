@@ -50,6 +50,15 @@ export function percent(share: number): string {
   return `${fixed(100 * share, 1)}%`;
 }
 
+/**
+ * A factor with two decimals, or three digits where it is large.
+ *
+ * @example factor(1.948) // '1.95'
+ */
+export function factor(value: number): string {
+  return value < 10 ? value.toFixed(2) : grouped(Number(value.toPrecision(3)));
+}
+
 /** A relative width as a percentage with two significant digits. */
 export function relativePercent(share: number): string {
   return `${fixed(100 * share, decimalsFor(Math.abs(100 * share)))}%`;

@@ -2,6 +2,7 @@ import { printable } from '../messages/printable.js';
 import type { RunRecord } from '../result/record.js';
 import { methodWords } from './bracket-text.js';
 import { counted, decimalsFor, duration, fixed, grouped, isWithoutNoise, percent } from './numbers.js';
+import { pathsSentence } from './paths-text.js';
 import { paragraph } from './prose.js';
 
 /** The counts the run was made with, and what the pilot expected of them. */
@@ -33,6 +34,7 @@ export function planText(record: RunRecord, width: number): string {
       `The pilot (${counted(pilot.outerPathCount, 'path')}) expected a bracket ${fixed(pilot.expectedWidth, decimals)} ${money} wide${wanted}; it became ${fixed(reached, decimals)}.`,
     );
   }
+  sentences.push(pathsSentence(record.paths));
   return paragraph(sentences.join(' '), width);
 }
 

@@ -34,6 +34,20 @@ export interface Plan {
   readonly upper: UpperMethod;
 }
 
+/** Which of the fit's paths were in memory at once, and what it cost; it changes no result. */
+export interface PathsFinding {
+  /** All of them, or one segment of dates at a time, simulated again from checkpoints. */
+  readonly kept: 'all' | 'segments';
+  /** Dates of one segment; all dates after today where all paths are kept. */
+  readonly segmentDates: number;
+  /** Dates at which the drivers are kept for good, to simulate on from. */
+  readonly checkpointCount: number;
+  /** Steps by which the fit's paths are simulated, over those that keeping all of them would need. */
+  readonly workFactor: number;
+  /** Memory that the paths take. @unit bytes */
+  readonly bytes: number;
+}
+
 /** What the pilot saw, and from which the plan was made; null when every count was given. */
 export interface PilotFinding {
   readonly outerPathCount: number;
@@ -74,6 +88,7 @@ export interface RunRecord {
   readonly decidedBy: CheckedModel['contract']['decidedBy'];
   readonly plan: Plan;
   readonly pilot: PilotFinding | null;
+  readonly paths: PathsFinding;
   readonly lower: BoundEstimate;
   readonly upper: BoundEstimate;
   /** Every upper bound (for an issuer: every martingale bound) that was computed, the bracket's own among them. */
@@ -115,6 +130,7 @@ export interface Forecast {
   /** Bytes resident at the peak, all threads together. */
   readonly peakMemoryBytes: number;
   readonly machineMemoryBytes: number | null;
+  readonly paths: PathsFinding;
   /** Counted in path-dates: one path moved by one date and its basis evaluated. */
   readonly work: { readonly fit: number; readonly bounds: number | null; readonly nested: number | null };
   /** Columns of the regression and polynomials of the martingale. */

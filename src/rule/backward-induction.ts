@@ -7,7 +7,10 @@ import type { Rule } from './rule.js';
 /** The three kinds of sweep over the fit's paths at one date; `fit-sweeps.ts` says what each sums. */
 export type SweepKind = 'values' | 'residuals' | 'direction';
 
-/** The sweeps over all paths of the fit, wherever they run; results come in the order of the blocks. */
+/**
+ * The sweeps over all paths of the fit, wherever they run and wherever the paths come from; results come in the order
+ * of the blocks. Dates are swept backward.
+ */
 export interface FitWork {
   simulate(): Promise<Moments[][][]>;
   sweep(kind: SweepKind, date: number): Promise<SweepSums[]>;

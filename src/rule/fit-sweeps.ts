@@ -1,29 +1,8 @@
 import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
-import { blockLanes, columnStride } from '../program/program.js';
 import type { Block } from './block.js';
+import { type BlockRange, type FitStore, forEachBlock, loadPaths } from './fit-store.js';
 import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
-
-/**
- * The fit's paths and values, on shared memory.
- *
- * A sweep writes values only from the paths and the rule, so that a sweep which broke off can be run again.
- */
-export interface FitStore {
-  readonly pathCount: number;
-  /** @shape blocks × dates (1 … last) × drivers × columnStride */
-  readonly paths: Float64Array;
-  /** Fitted value of each path at the date after the one in work, in money of today. @shape paths */
-  readonly values: Float64Array;
-  /** Direction of search at the date in work. @shape columns, then polynomials × integrand columns */
-  readonly direction: Float64Array;
-}
-
-/** A run of whole blocks; the smallest unit that is handed to a worker. */
-export interface BlockRange {
-  readonly firstBlock: number;
-  readonly blockCount: number;
-}
 
 /** Sums of one sweep over some blocks, to be added in the order of the blocks. */
 export interface SweepSums {
@@ -34,43 +13,6 @@ export interface SweepSums {
   /** Σ column × response × polynomial. @shape polynomials × integrand columns */
   readonly integrandProducts: Float64Array;
   readonly response: Moments;
-}
-
-/** Runs `work` on each block of a range that still holds paths. */
-export function forEachBlock(
-  block: Block,
-  range: BlockRange,
-  pathCount: number,
-  work: (index: number, firstPath: number) => void,
-): void {
-  for (let index = range.firstBlock; index < range.firstBlock + range.blockCount; index++) {
-    const firstPath = index * blockLanes;
-    block.lanes = Math.min(blockLanes, pathCount - firstPath);
-    if (block.lanes <= 0) return;
-    work(index, firstPath);
-  }
-}
-
-/** Draws and stores the fit's paths; returns moments of the variables. @shape result: dates × variables, date 0 empty */
-export function simulateFit(block: Block, store: FitStore, range: BlockRange): Moments[][] {
-  const { programs } = block;
-  const { layout } = programs;
-  const moments = programs.times.map(() => new Array<Moments>(programs.variableCount).fill(noMoments));
-  forEachBlock(block, range, store.pathCount, (index, firstPath) => {
-    block.restart();
-    for (let date = 0; date + 1 < programs.times.length; date++) {
-      block.advance();
-      block.draw('fit', index, date, 0);
-      block.step(date, firstPath);
-      storePaths(block, store, index, date + 1);
-      block.writeVariables();
-      const row = moments[date + 1]!;
-      for (let v = 0; v < programs.variableCount; v++) {
-        row[v] = mergeMoments(row[v]!, block.interpreter.moments(layout.variables + v, block.lanes));
-      }
-    }
-  });
-  return moments;
 }
 
 /**
@@ -171,29 +113,4 @@ function emptySums(
     products: new Float64Array(columnCount),
     integrandProducts: new Float64Array(kind === 'gram' ? 0 : integrandColumnCount * polynomialNames.length),
   };
-}
-
-function pathOffset(block: Block, index: number, date: number): number {
-  const { times, drivers } = block.programs;
-  return (index * (times.length - 1) + date - 1) * drivers.length * columnStride;
-}
-
-function storePaths(block: Block, store: FitStore, index: number, date: number): void {
-  store.paths.set(nextDrivers(block), pathOffset(block, index, date));
-}
-
-function loadPaths(block: Block, store: FitStore, index: number, date: number): void {
-  if (date === 0) {
-    block.restart();
-    return;
-  }
-  const drivers = nextDrivers(block);
-  const offset = pathOffset(block, index, date);
-  drivers.set(store.paths.subarray(offset, offset + drivers.length));
-}
-
-/** The columns of the drivers at `next`, as they stand in the workspace. */
-function nextDrivers(block: Block): Float64Array {
-  const first = block.programs.layout.next * columnStride;
-  return block.interpreter.columns.subarray(first, first + block.driverCount * columnStride);
 }

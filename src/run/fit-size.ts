@@ -1,6 +1,7 @@
-import { blockLanes, columnStride } from '../program/program.js';
+import { blockLanes } from '../program/program.js';
 import type { CompiledKernels } from '../program/wasm-module.js';
-import type { FitStore } from '../rule/fit-sweeps.js';
+import { type FitStore, slotLength } from '../rule/fit-store.js';
+import { keepAllPaths, type PathKeeping, slotCount } from '../rule/path-keeping.js';
 import type { Programs } from '../rule/programs.js';
 import { emptyRule, sharedNumbers } from '../rule/rule.js';
 import type { JobContext } from '../workers/jobs.js';
@@ -16,25 +17,19 @@ export function defaultFitPathCount(programs: Programs): number {
   return Math.min(largestFitPathCount, Math.max(smallestFitPathCount, wanted));
 }
 
-/** Bytes that the fit's paths and values take on shared memory. */
-export function fitStoreBytes(programs: Programs, pathCount: number): number {
-  const blockCount = Math.ceil(pathCount / blockLanes);
-  const perBlock = (programs.times.length - 1) * programs.drivers.length * columnStride + blockLanes;
-  return blockCount * perBlock * Float64Array.BYTES_PER_ELEMENT;
-}
-
-/** Opens the shared memory of a run. */
+/** Opens the shared memory of a run; all paths stay in memory unless it is told otherwise. */
 export function openContext(
   programs: Programs,
   seed: string,
   pathCount: number,
   kernels: CompiledKernels | null,
+  keeping: PathKeeping = keepAllPaths(programs.times.length - 1),
 ): JobContext {
-  const blockCount = Math.ceil(pathCount / blockLanes);
   const store: FitStore = {
     pathCount,
-    paths: sharedNumbers(blockCount * (programs.times.length - 1) * programs.drivers.length * columnStride),
-    values: sharedNumbers(blockCount * blockLanes),
+    keeping,
+    paths: sharedNumbers(slotCount(keeping) * slotLength(programs, pathCount)),
+    values: sharedNumbers(Math.ceil(pathCount / blockLanes) * blockLanes),
     direction: sharedNumbers(programs.columns.length + programs.polynomialNames.length * programs.integrandColumnCount),
   };
   return { programs, seed, kernels, rule: emptyRule(programs), store };

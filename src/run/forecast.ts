@@ -1,33 +1,27 @@
-import { columnStride } from '../program/program.js';
 import type { Forecast, Plan } from '../result/record.js';
 import { sweepsPerDate } from '../rule/backward-induction.js';
-import { type Programs, workspaceColumnCount } from '../rule/programs.js';
-import { fitStoreBytes } from './fit-size.js';
-
-/** Resident before any work: the engine, this program's code, and each thread's own engine. Measured, see DEVELOPERS.md. */
-const processBytes = 97e6;
-const threadBytes = 25e6;
+import type { PathKeeping } from '../rule/path-keeping.js';
+import type { Programs } from '../rule/programs.js';
+import { describeKeeping } from './fit-memory.js';
+import { peakMemoryBytes } from './peak-memory.js';
 
 /** What a run will need, from its counts alone. */
 export function forecastOf(
   programs: Programs,
   counts: ForecastCounts,
+  keeping: PathKeeping,
   workerCount: number,
   machineMemoryBytes: number | null,
 ): Forecast {
   const dateCount = programs.times.length - 1;
+  const paths = describeKeeping(programs, counts.fitPathCount, keeping);
   const columnCount = programs.columns.length;
-  const workspaceBytes = workspaceColumnCount(programs) * columnStride * 8;
-  const ruleBytes = (dateCount + 1) * columnCount * (1 + programs.polynomialNames.length) * 8;
   return {
-    peakMemoryBytes:
-      processBytes +
-      workerCount * (threadBytes + workspaceBytes) +
-      fitStoreBytes(programs, counts.fitPathCount) +
-      ruleBytes,
+    peakMemoryBytes: peakMemoryBytes(programs, counts, paths.bytes, workerCount),
     machineMemoryBytes,
+    paths,
     work: {
-      fit: counts.fitPathCount * dateCount * (1 + sweepsPerDate(programs)),
+      fit: counts.fitPathCount * dateCount * (paths.workFactor + sweepsPerDate(programs)),
       bounds:
         counts.outerPathCount === null || counts.innerPointCount === null
           ? null

@@ -26,7 +26,7 @@ export function judgeCounts(programs: Programs, counts: ForecastCounts, forecast
       mistake('memory-beyond-machine', {
         what: `The run needs about ${memory(peakMemoryBytes)} of memory; the machine has ${memory(machineMemoryBytes)}.`,
         why: 'The paths of the fit are kept in memory; with less, the machine would stall or stop the run.',
-        mend: 'Lower `counts: { fit: … }` under method, or state fewer decision dates or drivers.',
+        mend: 'Give the paths less with `--fit-memory 100MB`, lower `counts: { fit: … }` under method, or state fewer drivers.',
         evidence: { peakMemoryBytes, machineMemoryBytes },
       }),
     );

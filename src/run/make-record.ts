@@ -9,6 +9,7 @@ import type {
   BoundMethod,
   DateFinding,
   Estimate,
+  PathsFinding,
   PilotFinding,
   Plan,
   RunRecord,
@@ -26,6 +27,7 @@ export interface RunFindings {
   readonly programs: Programs;
   readonly plan: Plan;
   readonly pilot: PilotFinding | null;
+  readonly paths: PathsFinding;
   readonly fits: readonly StepFit[];
   readonly outer: OuterSums;
   /** Null when the nested bound was not asked for, or when the run was stopped before it. */
@@ -80,6 +82,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
     decidedBy: model.contract.decidedBy,
     plan,
     pilot,
+    paths: findings.paths,
     lower,
     upper,
     uppers: martingales,

@@ -28,8 +28,17 @@ export interface Overrides {
   readonly upper?: UpperMethod;
 }
 
+/** What a check takes beside the scenario. */
+export interface CheckOptions extends Overrides {
+  /**
+   * Memory that the fit's paths may take; what does not fit is simulated again when it is needed. The result does not
+   * depend on it. Default: 512e6. @unit bytes
+   */
+  readonly fitMemoryBytes?: number;
+}
+
 /** Everything that a valuation takes beside the scenario. */
-export interface ValueOptions extends Overrides {
+export interface ValueOptions extends CheckOptions {
   /** Replays the counts of an earlier run instead of making a pilot. */
   readonly plan?: Plan;
   /** Wall time to aim for; it is turned into counts once, after the pilot. */

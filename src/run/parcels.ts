@@ -1,5 +1,5 @@
 import { blockLanes } from '../program/program.js';
-import type { BlockRange } from '../rule/fit-sweeps.js';
+import type { BlockRange } from '../rule/fit-store.js';
 import { NotFinite, type NotFinitePlace } from '../rule/not-finite.js';
 import type { Executor } from '../workers/executor.js';
 import type { Job, ResultOf } from '../workers/jobs.js';

@@ -7,6 +7,7 @@ import type { JobContext } from '../workers/jobs.js';
 import { runNested, runOuter } from './bounds-stage.js';
 import { countsBeforePilot } from './counts.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
+import { decideKeeping, describeKeeping } from './fit-memory.js';
 import { openContext } from './fit-size.js';
 import { runFit } from './fit-stage.js';
 import { forecastOf } from './forecast.js';
@@ -35,15 +36,15 @@ export async function valueScenario(
   const counts = options.plan ?? countsBeforePilot(programs, scenario.model.method);
   const planMessages = options.plan === undefined ? [] : judgePlan(options.plan);
   if (planMessages.length > 0) return { kind: 'refused', messages: planMessages };
-  const messages = judgeCounts(programs, counts, forecastOf(programs, counts, workerCount, environment.memoryBytes));
+  const kept = decideKeeping(programs, counts.fitPathCount, options.fitMemoryBytes);
+  if (kept.kind === 'refused') return kept;
+  const { keeping } = kept;
+  const forecast = forecastOf(programs, counts, keeping, workerCount, environment.memoryBytes);
+  const messages = judgeCounts(programs, counts, forecast);
   if (messages.length > 0) return { kind: 'refused', messages };
 
-  const context = openContext(
-    programs,
-    scenario.model.seed,
-    counts.fitPathCount,
-    environment.kernels(options.interpreter),
-  );
+  const kernels = environment.kernels(options.interpreter);
+  const context = openContext(programs, scenario.model.seed, counts.fitPathCount, kernels, keeping);
   const executor = environment.openExecutor(context, workerCount);
   let stage: Progress['stage'] = 'fit';
   const onProgress = (progress: Progress) => {
@@ -93,6 +94,7 @@ async function runStages(
     programs,
     plan,
     pilot,
+    paths: describeKeeping(programs, plan.fitPathCount, context.store.keeping),
     fits,
     outer,
     nested,

@@ -1,10 +1,12 @@
+import { median } from 'simple-statistics';
 import { estimateOf, type MeanEstimate } from '../numeric/estimate.js';
 import { blockLanes } from '../program/program.js';
-import { fitRule } from '../rule/backward-induction.js';
+import { type FitWork, fitRule } from '../rule/backward-induction.js';
 import { Block } from '../rule/block.js';
 import { buildPrograms, type Programs, withoutMartingale } from '../rule/programs.js';
 import { readScenario } from '../scenario/read.js';
-import { interpreterMaker } from '../workers/jobs.js';
+import type { Executor } from '../workers/executor.js';
+import { interpreterMaker, type JobContext } from '../workers/jobs.js';
 import { runOuter } from './bounds-stage.js';
 import type { Environment } from './environment.js';
 import { openContext } from './fit-size.js';
@@ -46,32 +48,63 @@ const leastSeconds = 5;
 export async function runYardstick(pathCount: number, environment: Environment): Promise<YardstickLine> {
   const programs = yardstickPrograms();
   const draws = measureDraws(programs, pathCount, environment);
-  await withPasses(programs, warmUpPathCount, 0, environment, measureOnce);
-  const { fitSeconds, forwardSeconds, lower } = await withPasses(programs, pathCount, 0, environment, measureOnce);
+  await withPasses(programs, warmUpPathCount, [0], environment, async ([passes]) => measureOnce(passes!));
+  const { fitSeconds, forwardSeconds, lower } = await withPasses(
+    programs,
+    pathCount,
+    [0],
+    environment,
+    async ([passes]) => measureOnce(passes!),
+  );
   return {
     program: 'tarry',
     ...draws,
-    ...perPathDate(programs, pathCount, fitSeconds, forwardSeconds),
+    nsPerPathDateFit: nsPerPathDate(programs, pathCount, fitSeconds),
+    nsPerPathDateForward: nsPerPathDate(programs, pathCount, forwardSeconds),
     lower: rounded(lower.value, 4),
     halfWidth95: rounded(lower.halfWidth95 ?? Number.NaN, 4),
   };
 }
 
-/** Measures several workers against one, both warm. */
+/**
+ * Measures several workers against one, both warm: passes alternate, so that a machine whose speed drifts treats both
+ * alike, and the medians are told.
+ */
 export async function runYardstickWorkers(
   pathCount: number,
   workers: number,
   environment: Environment,
 ): Promise<WorkersLine> {
   const programs = yardstickPrograms();
-  const one = await withPasses(programs, pathCount, 1, environment, measureWarm);
-  const several = await withPasses(programs, pathCount, workers, environment, measureWarm);
+  return withPasses(programs, pathCount, [1, workers], environment, async ([one, several]) => {
+    await measureOnce(one!);
+    await measureOnce(several!);
+    const fit = await compare(one!.fitOnce, several!.fitOnce);
+    const forward = await compare(
+      async () => (await one!.valueOnce()).seconds,
+      async () => (await several!.valueOnce()).seconds,
+    );
+    return {
+      program: 'tarry',
+      workers,
+      nsPerPathDateFit: nsPerPathDate(programs, pathCount, fit.seconds),
+      nsPerPathDateForward: nsPerPathDate(programs, pathCount, forward.seconds),
+      speedupFit: rounded(fit.speedup, 2),
+      speedupForward: rounded(forward.speedup, 2),
+    };
+  });
+}
+
+async function compare(
+  one: () => Promise<number>,
+  several: () => Promise<number>,
+): Promise<{ seconds: number; speedup: number }> {
+  const rounds: { one: number; several: number }[] = [];
+  for (let total = 0; total < leastSeconds; total += rounds.at(-1)!.one)
+    rounds.push({ one: await one(), several: await several() });
   return {
-    program: 'tarry',
-    workers,
-    ...perPathDate(programs, pathCount, several.fitSeconds, several.forwardSeconds),
-    speedupFit: rounded(one.fitSeconds / several.fitSeconds, 2),
-    speedupForward: rounded(one.forwardSeconds / several.forwardSeconds, 2),
+    seconds: median(rounds.map((round) => round.several)),
+    speedup: median(rounds.map((round) => round.one / round.several)),
   };
 }
 
@@ -81,12 +114,8 @@ function yardstickPrograms(): Programs {
   return withoutMartingale(buildPrograms(scenario.model));
 }
 
-function perPathDate(programs: Programs, pathCount: number, fitSeconds: number, forwardSeconds: number) {
-  const pathDates = pathCount * (programs.times.length - 1);
-  return {
-    nsPerPathDateFit: rounded((fitSeconds * 1e9) / pathDates, 1),
-    nsPerPathDateForward: rounded((forwardSeconds * 1e9) / pathDates, 1),
-  };
+function nsPerPathDate(programs: Programs, pathCount: number, seconds: number): number {
+  return rounded((seconds * 1e9) / (pathCount * (programs.times.length - 1)), 1);
 }
 
 /** Draws alone, and draws with steps, on one block again and again. */
@@ -138,55 +167,47 @@ async function measureOnce({ fitOnce, valueOnce }: Passes): Promise<Measured> {
   return { fitSeconds, forwardSeconds: seconds, lower };
 }
 
-/** Repeats each pass until it has lasted long enough, after one that warms the threads up. */
-async function measureWarm({ fitOnce, valueOnce }: Passes): Promise<Measured> {
-  const { lower } = await measureOnce({ fitOnce, valueOnce });
-  return {
-    fitSeconds: await meanSeconds(fitOnce),
-    forwardSeconds: await meanSeconds(async () => (await valueOnce()).seconds),
-    lower,
-  };
-}
-
-async function meanSeconds(pass: () => Promise<number>): Promise<number> {
-  let total = 0;
-  let count = 0;
-  for (; total < leastSeconds; count++) total += await pass();
-  return total / count;
-}
-
-async function withPasses(
+/** Opens an executor for each count of workers on one store of paths, and gives what can be measured on each. */
+async function withPasses<T>(
   programs: Programs,
   pathCount: number,
-  workerCount: number,
+  workerCounts: readonly number[],
   environment: Environment,
-  measure: (passes: Passes) => Promise<Measured>,
-): Promise<Measured> {
-  const { now } = environment;
+  measure: (passes: readonly Passes[]) => Promise<T>,
+): Promise<T> {
   const context = openContext(programs, seed, pathCount, environment.kernels('wasm'));
-  const { rule, store } = context;
-  const executor = environment.openExecutor(context, workerCount);
-  const seconds = async <T>(work: () => Promise<T>): Promise<{ seconds: number; result: T }> => {
-    const started = now();
-    const result = await work();
-    return { seconds: (now() - started) / 1000, result };
-  };
+  const executors = workerCounts.map((workerCount) => environment.openExecutor(context, workerCount));
   try {
-    const work = fitWorkOn(executor, programs, store, undefined, () => {});
-    const simulated = await work.simulate();
-    const counts = { outerPathCount: pathCount, innerPointCount: 0 };
-    return await measure({
-      fitOnce: async () =>
-        (await seconds(() => fitRule(programs, rule, store.direction, { ...work, simulate: async () => simulated })))
-          .seconds,
-      valueOnce: async () => {
-        const outer = await seconds(() => runOuter(executor, programs, 'outer', counts, undefined, () => {}));
-        return { seconds: outer.seconds, lower: estimateOf(outer.result.sums.lower) };
-      },
-    });
+    const simulated = await fitWorkOn(executors[0]!, programs, context.store, undefined, () => {}).simulate();
+    return await measure(
+      executors.map((executor) => passesOn(executor, context, pathCount, simulated, environment.now)),
+    );
   } finally {
-    await executor.close();
+    await Promise.all(executors.map((executor) => executor.close()));
   }
+}
+
+function passesOn(
+  executor: Executor,
+  { programs, rule, store }: JobContext,
+  pathCount: number,
+  simulated: Awaited<ReturnType<FitWork['simulate']>>,
+  now: () => number,
+): Passes {
+  const work = fitWorkOn(executor, programs, store, undefined, () => {});
+  const counts = { outerPathCount: pathCount, innerPointCount: 0 };
+  return {
+    async fitOnce() {
+      const started = now();
+      await fitRule(programs, rule, store.direction, { ...work, simulate: async () => simulated });
+      return (now() - started) / 1000;
+    },
+    async valueOnce() {
+      const started = now();
+      const { sums } = await runOuter(executor, programs, 'outer', counts, undefined, () => {});
+      return { seconds: (now() - started) / 1000, lower: estimateOf(sums.lower) };
+    },
+  };
 }
 
 function rounded(value: number, digits: number): number {

@@ -48,6 +48,13 @@ export const recordShape = z.looseObject({
   decidedBy: z.enum(['holder', 'issuer']),
   plan: planShape,
   pilot: z.looseObject({ expectedWidth: z.number(), wantedWidth: z.number().nullable() }).nullable(),
+  paths: z.looseObject({
+    kept: z.enum(['all', 'segments']),
+    segmentDates: z.int().min(1),
+    checkpointCount: z.int().min(0),
+    workFactor: z.number(),
+    bytes: z.number(),
+  }),
   lower: bound,
   upper: bound,
   uppers: z.array(bound),

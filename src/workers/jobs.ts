@@ -10,15 +10,9 @@ import { wasmInterpreters } from '../program/wasm-interpreter.js';
 import type { CompiledKernels } from '../program/wasm-module.js';
 import type { SweepKind } from '../rule/backward-induction.js';
 import { Block } from '../rule/block.js';
-import {
-  type BlockRange,
-  type FitStore,
-  type SweepSums,
-  simulateFit,
-  sweepDirection,
-  sweepResiduals,
-  sweepValues,
-} from '../rule/fit-sweeps.js';
+import { restoreSegment, simulateFit } from '../rule/fit-paths.js';
+import type { BlockRange, FitStore } from '../rule/fit-store.js';
+import { type SweepSums, sweepDirection, sweepResiduals, sweepValues } from '../rule/fit-sweeps.js';
 import { NotFinite, type NotFinitePlace } from '../rule/not-finite.js';
 import type { Programs } from '../rule/programs.js';
 import type { Rule } from '../rule/rule.js';
@@ -36,6 +30,7 @@ export interface JobContext {
 /** One parcel of work: small plain data; its result depends on it and on the context alone. */
 export type Job =
   | { readonly kind: 'simulate'; readonly range: BlockRange }
+  | { readonly kind: 'restore'; readonly segment: number; readonly range: BlockRange }
   | { readonly kind: 'sweep'; readonly sweep: SweepKind; readonly date: number; readonly range: BlockRange }
   | { readonly kind: 'outer'; readonly work: OuterWork; readonly range: BlockRange }
   | { readonly kind: 'nested'; readonly work: NestedWork; readonly range: BlockRange };
@@ -43,11 +38,13 @@ export type Job =
 /** Which result belongs to which job. */
 export type ResultOf<J extends Job> = J extends { kind: 'simulate' }
   ? Moments[][]
-  : J extends { kind: 'sweep' }
-    ? SweepSums
-    : J extends { kind: 'outer' }
-      ? OuterSums
-      : NestedSums;
+  : J extends { kind: 'restore' }
+    ? number
+    : J extends { kind: 'sweep' }
+      ? SweepSums
+      : J extends { kind: 'outer' }
+        ? OuterSums
+        : NestedSums;
 
 /** A job's result, or where a path left the finite numbers: data, so that it crosses threads whole. */
 export type JobReply =
@@ -91,6 +88,8 @@ function doJob({ block, outer, nested }: Bench, { store, rule }: JobContext, job
   switch (job.kind) {
     case 'simulate':
       return simulateFit(block, store, job.range);
+    case 'restore':
+      return restoreSegment(block, store, job.segment, job.range);
     case 'sweep':
       return sweeps[job.sweep](block, store, rule, job.date, job.range);
     case 'outer':

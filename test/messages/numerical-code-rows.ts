@@ -2,8 +2,8 @@ import { defectMessage } from '#built/cli/defect-message.js';
 import { value } from '#built/index.js';
 import type { Message } from '#built/messages/message.js';
 import { judge } from '#built/result/advice.js';
-import type { Plan } from '#built/result/record.js';
 import { checkScenario } from '#built/run/check.js';
+import type { ValueOptions } from '#built/run/options.js';
 import { thisMachine } from '#built/workers/machine.js';
 import { recordOf } from '../run-value.js';
 import { lots } from '../scenario-texts.js';
@@ -13,7 +13,7 @@ import type { CodeRow } from './scenario-code-rows.js';
 const small = 'counts: { fit: 3000, outer: 512, inner: 8 }';
 const adviceOf = async (method: string[]): Promise<readonly Message[]> => (await recordOf(lots({ method }))).advice;
 
-async function refusal(text: string, changed: { plan?: Plan } = {}): Promise<readonly Message[]> {
+async function refusal(text: string, changed: ValueOptions = {}): Promise<readonly Message[]> {
   const outcome = await value(text, { workers: 0, ...changed });
   return outcome.kind === 'refused' ? outcome.messages : [];
 }
@@ -47,6 +47,7 @@ async function tooSmall(): Promise<readonly Message[]> {
 export const numericalCodeRows: readonly CodeRow[] = [
   ['not-finite', () => refusal(lots({ payoff: 'max(0, log(largest(lot) - 100))', method: [small] }))],
   ['memory-beyond-machine', tooSmall],
+  ['fit-memory-too-small', () => refusal(lots({ method: [small] }), { fitMemoryBytes: 1000 })],
   ['fewer-paths-than-columns', () => refusal(lots({ method: ['counts: { fit: 20 }'] }))],
   ['plan-does-not-fit', () => refusal(lots(), { plan: { ...smallPlan, outerPathCount: 0.5 } })],
   ['defect', () => [defectMessage(new Error('a column has no meaning'))]],

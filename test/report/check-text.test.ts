@@ -8,6 +8,7 @@ const findings: CheckFindings = {
   forecast: {
     peakMemoryBytes: 120 * 1024 ** 2,
     machineMemoryBytes: 16 * 1024 ** 3,
+    paths: sampleRecord.paths,
     work: { fit: 1.2e6, bounds: null, nested: 0 },
     columnCount: 10,
     polynomialCount: 3,
@@ -48,6 +49,17 @@ describe('the text of a check', () => {
     const nested = { ...findings.forecast, machineMemoryBytes: null, work: { fit: 1, bounds: 5, nested: 3e9 } };
     expect(checkReport({ ...findings, forecast: nested })).toMatch(
       /Andersen-Broadie bound +about 3 billion path-dates/,
+    );
+  });
+
+  it('says whether the paths are kept or recomputed, and by which factor the simulation grows', () => {
+    const words = (text: string) => text.replace(/\s+/g, ' ');
+    expect(words(checkReport(findings))).toContain(
+      'All paths of the fit are kept in memory (29.2 MB), so that each is simulated once.',
+    );
+    const paths = { kept: 'segments', segmentDates: 4, checkpointCount: 5, workFactor: 1.8333, bytes: 9e6 } as const;
+    expect(words(checkReport({ ...findings, forecast: { ...findings.forecast, paths } }))).toContain(
+      'The paths of the fit are kept in memory (9 MB) for 4 dates at a time and at 5 checkpoints, and recomputed elsewhere: 1.83 times the work of simulating each once.',
     );
   });
 

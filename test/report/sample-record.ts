@@ -51,6 +51,7 @@ export const sampleRecord: RunRecord = {
     expectedWidth: 0.0241,
     wantedWidth: 0.0262,
   },
+  paths: { kept: 'all', segmentDates: 30, checkpointCount: 0, workFactor: 1, bytes: 29_203_200 },
   lower: { value: 16.154321, standardError: 0.0021, halfWidth95: 0.004116, pathCount: 61440, method: 'rule' },
   upper: { value: 16.166789, standardError: 0.0011, halfWidth95: 0.002156, pathCount: 61440, method: 'one-step' },
   uppers: [
