@@ -1,7 +1,7 @@
 #!/usr/bin/env node
 /** Prints where the time of a valuation goes, stage by stage and kernel by kernel. Argument: a scenario file. */
 import { readFileSync } from 'node:fs';
-import { profileScenario } from '../dist/run/profile.js';
+import { profileScenario } from '../dist/benchmark/profile.js';
 import { thisMachine } from '../dist/workers/machine.js';
 
 const file = process.argv[2] ?? 'scenarios/02-five-lots.yaml';

@@ -5,7 +5,7 @@
  * The work is that of a valuation, through the same programs, interpreter and conductors: five drivers, nine dates,
  * nineteen columns, no martingale. Argument: the count of paths, 1,000,000 if left out.
  */
-import { runYardstick, runYardstickWorkers } from '../dist/run/yardstick.js';
+import { runYardstick, runYardstickWorkers } from '../dist/benchmark/yardstick.js';
 import { thisMachine } from '../dist/workers/machine.js';
 
 const pathCount = Number(process.argv[2] ?? 1_000_000);

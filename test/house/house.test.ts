@@ -22,6 +22,7 @@ const table: Record<string, readonly string[]> = {
   workers: ['bounds', 'rule', 'program'],
   store: ['result'],
   run: ['program', 'scenario', 'rule', 'bounds', 'workers', 'result'],
+  benchmark: ['run', 'workers', 'rule', 'scenario', 'program'],
   report: ['result'],
   cli: ['run', 'store', 'report', 'result'],
 };

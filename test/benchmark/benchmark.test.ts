@@ -1,6 +1,6 @@
 import { expect, test } from 'vitest';
-import { profileScenario } from '#built/run/profile.js';
-import { runYardstick } from '#built/run/yardstick.js';
+import { profileScenario } from '#built/benchmark/profile.js';
+import { runYardstick } from '#built/benchmark/yardstick.js';
 import { thisMachine } from '#built/workers/machine.js';
 import { lots } from '../scenario-texts.js';
 

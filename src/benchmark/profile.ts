@@ -1,13 +1,13 @@
 import { type KernelTime, timeInterpreters } from '../program/timed-interpreter.js';
+import { runNested, runOuter } from '../run/bounds-stage.js';
+import { countsBeforePilot } from '../run/counts.js';
+import type { Environment } from '../run/environment.js';
+import { openContext } from '../run/fit-size.js';
+import { runFit } from '../run/fit-stage.js';
+import { choosePlan, fixedPlan } from '../run/pilot-stage.js';
+import { prepare } from '../run/prepare.js';
 import { createInProcessExecutor } from '../workers/in-process.js';
 import { createJobRunner, interpreterMaker } from '../workers/jobs.js';
-import { runNested, runOuter } from './bounds-stage.js';
-import { countsBeforePilot } from './counts.js';
-import type { Environment } from './environment.js';
-import { openContext } from './fit-size.js';
-import { runFit } from './fit-stage.js';
-import { choosePlan, fixedPlan } from './pilot-stage.js';
-import { prepare } from './prepare.js';
 
 /** Where the time of one stage goes. */
 export interface StageProfile {
