@@ -13,7 +13,7 @@ export interface StageSums<S> {
 }
 
 /** Steps of one block that a parcel should at least hold, so that messages stay small beside the work. */
-const smallestParcelSteps = 256;
+const smallestParcelSteps = 128;
 
 /** Values the outer paths with both bounds. */
 export async function runOuter(
