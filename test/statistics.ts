@@ -1,4 +1,4 @@
-import type { Moments } from '#built/numeric/moments.js';
+import { type Moments, noMoments } from '#built/numeric/moments.js';
 import { normalQuantile } from '#built/program/elementary.js';
 
 /** Distance of a mean from a value in standard errors. */
@@ -27,4 +27,15 @@ export function meanSquareBand(count: number): { low: number; high: number } {
   const spread = 2 / (9 * count);
   const cube = (sign: number) => (1 - spread + sign * normalQuantile(0.9995) * Math.sqrt(spread)) ** 3;
   return { low: cube(-1), high: cube(1) };
+}
+
+/** Moments of `values[offset … offset + count - 1]` by two passes, in rising order. */
+export function momentsOf(values: Float64Array, offset: number, count: number): Moments {
+  if (count === 0) return noMoments;
+  let sum = 0;
+  for (let i = offset; i < offset + count; i++) sum += values[i]!;
+  const mean = sum / count;
+  let squares = 0;
+  for (let i = offset; i < offset + count; i++) squares += (values[i]! - mean) * (values[i]! - mean);
+  return { count, mean, squares };
 }

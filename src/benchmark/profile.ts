@@ -1,7 +1,9 @@
+import type { Message } from '../messages/message.js';
 import { type KernelTime, timeInterpreters } from '../program/timed-interpreter.js';
 import { runNested, runOuter } from '../run/bounds-stage.js';
 import { countsBeforePilot } from '../run/counts.js';
 import type { Environment } from '../run/environment.js';
+import { decideKeeping } from '../run/fit-memory.js';
 import { openContext } from '../run/fit-size.js';
 import { runFit } from '../run/fit-stage.js';
 import { choosePlan, fixedPlan } from '../run/pilot-stage.js';
@@ -17,18 +19,27 @@ export interface StageProfile {
   readonly kernels: readonly (KernelTime & { readonly share: number; readonly nsPerLane: number | null })[];
 }
 
-/**
- * Runs a scenario in the calling thread with a clock around every kernel.
- *
- * @fails throws when the scenario has mistakes
- */
-export async function profileScenario(source: string, environment: Environment): Promise<StageProfile[]> {
-  const outcome = prepare(source, {});
-  if (outcome.kind === 'refused') throw new Error(outcome.messages.map(({ what }) => what).join(' '));
+/** The stages in their order, or the mistakes of the scenario. */
+export type ProfileOutcome =
+  | { readonly kind: 'measured'; readonly stages: readonly StageProfile[] }
+  | { readonly kind: 'refused'; readonly messages: readonly Message[] };
+
+/** Runs a scenario in the calling thread with a clock around every kernel. */
+export async function profileScenario(source: string, path: string, environment: Environment): Promise<ProfileOutcome> {
+  const outcome = prepare(source, { path });
+  if (outcome.kind === 'refused') return outcome;
   const { scenario, programs } = outcome.prepared;
   const { now } = environment;
   const counts = countsBeforePilot(programs, scenario.model.method);
-  const context = openContext(programs, scenario.model.seed, counts.fitPathCount, environment.kernels('wasm'));
+  const decided = decideKeeping(programs, counts.fitPathCount, undefined);
+  if (decided.kind === 'refused') return decided;
+  const context = openContext(
+    programs,
+    scenario.model.seed,
+    counts.fitPathCount,
+    environment.kernels('wasm'),
+    decided.keeping,
+  );
   const { make, take } = timeInterpreters(interpreterMaker(context.kernels), now);
   const executor = createInProcessExecutor(createJobRunner(context, make));
   const options = { onProgress: () => {} };
@@ -53,5 +64,5 @@ export async function profileScenario(source: string, environment: Environment):
     await runOuter(executor, programs, 'outer', plan, undefined, () => {});
     if (plan.nestedOuterPathCount > 0) await runNested(executor, plan, undefined, () => {});
   });
-  return profiles;
+  return { kind: 'measured', stages: profiles };
 }

@@ -132,27 +132,21 @@ function sumInnerPoints(
 
 function sumPaths(block: Block, outer: OuterPrograms, kind: OuterKind, exerciseCounts: number[]): OuterSums {
   const { interpreter, lanes } = block;
-  const { columns } = outer;
+  const { columns, gaps } = outer;
   const moments = (column: number) => interpreter.moments(column, lanes);
-  /** Moments of a maximum less what the rule brings; overwrites the maximum. */
-  const above = (column: number) => {
-    const values = block.column(column);
-    const lower = block.column(columns.lower);
-    for (let lane = 0; lane < lanes; lane++) values[lane] = values[lane]! - lower[lane]!;
-    return moments(column);
-  };
-  const regressed = moments(columns.regressedUpper);
-  const regressedGap = above(columns.regressedUpper);
-  const oneStep =
-    kind === 'regressed'
-      ? { upper: noMoments, halfInner: noMoments, gap: noMoments }
-      : { upper: moments(columns.upper), halfInner: moments(columns.halfUpper), gap: above(columns.upper) };
-  return {
+  const oneStep = (column: number) => (kind === 'one-step' ? moments(column) : noMoments);
+  const bounds = {
     lower: moments(columns.lower),
-    ...oneStep,
-    regressed,
-    regressedGap,
     plain: moments(columns.plain),
+    regressed: moments(columns.regressedUpper),
+    upper: oneStep(columns.upper),
+    halfInner: oneStep(columns.halfUpper),
+  };
+  block.run(gaps[kind]);
+  return {
+    ...bounds,
+    regressedGap: moments(columns.regressedUpper),
+    gap: oneStep(columns.upper),
     exerciseCounts,
     neverCount: interpreter.sum(columns.unused, lanes),
   };

@@ -41,6 +41,8 @@ export interface OuterPrograms {
   /** Lets the rule choose and hindsight note what the date would have brought. */
   readonly choose: Readonly<Record<OuterKind, Program>>;
   readonly chooseLast: Readonly<Record<OuterKind, Program>>;
+  /** Takes what the rule brings off the maxima, at the very end. */
+  readonly gaps: Readonly<Record<OuterKind, Program>>;
 }
 
 /** Uniform inputs of the one-step `move`: 1 / inner points, 1 / half of them. */
@@ -80,12 +82,16 @@ export function buildOuterPrograms(programs: Programs): OuterPrograms {
       'one-step': buildChoose(programs, columns, 'one-step', true),
       regressed: buildChoose(programs, columns, 'regressed', true),
     },
+    gaps: {
+      'one-step': buildGaps(programs, columns, 'one-step'),
+      regressed: buildGaps(programs, columns, 'regressed'),
+    },
   };
 }
 
 /** All programs, for the block that is to run them. */
-export function outerProgramList({ addInner, move, choose, chooseLast }: OuterPrograms): Program[] {
-  return [addInner, ...[move, choose, chooseLast].flatMap((byKind) => Object.values(byKind))];
+export function outerProgramList({ addInner, move, choose, chooseLast, gaps }: OuterPrograms): Program[] {
+  return [addInner, ...[move, choose, chooseLast, gaps].flatMap((byKind) => Object.values(byKind))];
 }
 
 function buildAddInner({ layout }: Programs, { innerSum }: OuterColumns): Program {
@@ -148,4 +154,12 @@ function buildChoose({ layout, floor }: Programs, columns: OuterColumns, kind: O
     outputs.push({ node: graph.subtract(running, exercises), column: columns.running });
   }
   return compile(graph, outputs, 0, layout.scratch, 'choice');
+}
+
+function buildGaps({ layout }: Programs, columns: OuterColumns, kind: OuterKind): Program {
+  const graph = new Graph();
+  const lower = graph.column(columns.lower);
+  const maxima = kind === 'one-step' ? [columns.upper, columns.regressedUpper] : [columns.regressedUpper];
+  const outputs = maxima.map((column) => ({ node: graph.subtract(graph.column(column), lower), column }));
+  return compile(graph, outputs, 0, layout.scratch, 'gaps');
 }

@@ -46,7 +46,7 @@ export interface Counts {
 /**
  * Reads spreads and gap off a pilot for the upper bound that makes the bracket. Inner noise is taken to raise the
  * one-step bound as one over the inner count; the regressed bound has none. The nested bound is not part of a pilot: it
- * is taken to lie no farther from the lower bound than the one-step bound.
+ * is taken to lie no farther from the lower bound than the one-step bound or, without inner points, the regressed one.
  */
 export function modelOfPilot(sums: OuterSums, innerPointCount: number, method: UpperMethod): PilotModel {
   const lowerStandardDeviation = Math.sqrt(varianceOf(sums.lower));

@@ -1,5 +1,6 @@
 import { interpreterKinds, upperMethods } from '../index.js';
 import { mistake } from '../messages/build.js';
+import { memory } from '../messages/figures.js';
 import type { Message } from '../messages/message.js';
 import { nearest } from '../messages/nearest.js';
 import { listed } from '../messages/printable.js';
@@ -93,7 +94,7 @@ export function parseFitMemory(text: string): Parsed<number> {
   const unit = found?.[2]?.toUpperCase();
   const mend = 'Write --fit-memory 256MB or --fit-memory 1GB.';
   if (!POSITIVE_NUMBER.test(digits) || !(Number(digits) > 0)) {
-    const why = 'The paths of the fit may take so much memory; the others are computed again.';
+    const why = 'It must be a number above 0 with a unit: KB, MB, GB or TB, powers of ten.';
     return wrong(`--fit-memory ${text} is no amount of memory.`, why, mend, { text });
   }
   if (unit === undefined) {
@@ -101,7 +102,9 @@ export function parseFitMemory(text: string): Parsed<number> {
   }
   const bytes = Number(digits) * BYTES_PER[unit]!;
   if (!(bytes <= MOST_BYTES)) {
-    return wrong(`--fit-memory ${text} is out of range.`, 'No machine has so much memory.', mend, { bytes });
+    return wrong(`--fit-memory ${text} is out of range.`, `At most ${memory(MOST_BYTES)} can be asked for.`, mend, {
+      bytes,
+    });
   }
   return { value: bytes };
 }

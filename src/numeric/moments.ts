@@ -9,17 +9,6 @@ export interface Moments {
 /** The moments of an empty sample. */
 export const noMoments: Moments = { count: 0, mean: 0, squares: 0 };
 
-/** Moments of `values[offset … offset + count - 1]` by two passes, in rising order. */
-export function momentsOf(values: Float64Array, offset: number, count: number): Moments {
-  if (count === 0) return noMoments;
-  let sum = 0;
-  for (let i = offset; i < offset + count; i++) sum += values[i]!;
-  const mean = sum / count;
-  let squares = 0;
-  for (let i = offset; i < offset + count; i++) squares += (values[i]! - mean) * (values[i]! - mean);
-  return { count, mean, squares };
-}
-
 /**
  * Moments of two samples together; not associative to the last bit, so merge in a fixed order.
  *

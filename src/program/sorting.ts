@@ -71,6 +71,7 @@ export function sortCompanions(
  * larger of first and last, second and last but one, and so on, are the leading ones of both together.
  */
 function leadingItems(graph: Graph, items: readonly Item[], count: number): Item[] {
+  if (count < 1) return [];
   if (items.length < 2 * count) return sortItems(graph, items).slice(0, count);
   const middle = Math.floor(items.length / 2);
   const left = leadingItems(graph, items.slice(0, middle), count);

@@ -36,7 +36,7 @@ export function timeInterpreters(make: InterpreterMaker, now: () => number): Tim
     copy: (...words) => timed('copies', 0, () => inner.copy(...words)),
     drawNormals: (...words) => timed('normal draws', words[5], () => inner.drawNormals(...words)),
     combine: (...words) =>
-      timed(words[5] === 1 ? 'continuation value' : 'integrands', words[6], () => inner.combine(...words)),
+      timed(`combinations of columns, ${words[5]} at once`, words[6], () => inner.combine(...words)),
     addProducts: (...words) => timed('regressed increments', words[5], () => inner.addProducts(...words)),
     accumulateGram: (...words) => timed('normal equations', words[2], () => inner.accumulateGram(...words)),
     accumulateProducts: (...words) => timed('right-hand sides', words[4], () => inner.accumulateProducts(...words)),

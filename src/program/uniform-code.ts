@@ -14,15 +14,15 @@ const functionOfCode = (Object.keys(operations) as Operation[]).map((operation) 
 export function uniformCodeOf({ uniformCode, uniformInputCount }: Program, scalars: Float64Array): () => void {
   if (uniformCode.length === 0) return () => {};
   const inputs = new Float64Array(uniformInputCount).fill(Number.NaN);
-  let isFresh = true;
+  let isStale = true;
   return () => {
     for (let i = 0; i < uniformInputCount; i++) {
-      if (inputs[i] !== scalars[i]) {
+      if (!Object.is(inputs[i], scalars[i])) {
         inputs[i] = scalars[i]!;
-        isFresh = true;
+        isStale = true;
       }
     }
-    if (!isFresh) return;
+    if (!isStale) return;
     for (let i = 0; i < uniformCode.length; i += instructionWidth) {
       scalars[uniformCode[i + 1]!] = functionOfCode[uniformCode[i]!]!(
         scalars[uniformCode[i + 2]!]!,
@@ -30,6 +30,6 @@ export function uniformCodeOf({ uniformCode, uniformInputCount }: Program, scala
         scalars[uniformCode[i + 4]!]!,
       );
     }
-    isFresh = false;
+    isStale = false;
   };
 }

@@ -67,7 +67,7 @@ function invert(triangle: readonly (readonly number[])[]): number[][] {
  * Solves for the coefficients of every response on the compressed columns.
  *
  * The triangle R stands for all rows of the tall matrix, and R⁻ᵀ (column × response) for the responses; R⁻¹ times that
- * are the coefficients.
+ * are the coefficients, refined once.
  *
  * @param products Σ response × column. @shape responses × columns
  * @returns coefficients, those of dropped columns 0. @shape responses × columns
@@ -85,11 +85,23 @@ export function solveResponses(
       for (let k = 0; k < i; k++) sum -= triangle[k]![i]! * reduced[k]!;
       reduced[i] = sum / triangle[i]![i]!;
     }
-    for (let i = 0; i < kept.length; i++) {
-      let sum = 0;
-      for (let k = i; k < kept.length; k++) sum += inverse[i]![k]! * reduced[k]!;
-      coefficients[first + kept[i]!] = sum * scales[kept[i]!]!;
-    }
+    const solution = multiply(inverse, reduced);
+    // One step of refinement: the package squares the condition of the triangle, and so loses up to four digits.
+    const image = multiply(triangle, solution);
+    const correction = multiply(
+      inverse,
+      reduced.map((value, i) => value - image[i]!),
+    );
+    for (let i = 0; i < kept.length; i++)
+      coefficients[first + kept[i]!] = (solution[i]! + correction[i]!) * scales[kept[i]!]!;
   }
   return coefficients;
+}
+
+function multiply(rows: readonly (readonly number[])[], vector: Float64Array): Float64Array {
+  return Float64Array.from(rows, (row) => {
+    let sum = 0;
+    for (let k = 0; k < vector.length; k++) sum += row[k]! * vector[k]!;
+    return sum;
+  });
 }

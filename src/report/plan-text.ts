@@ -11,7 +11,7 @@ export function planText(record: RunRecord, width: number): string {
   const sentences = [
     `${counted(plan.fitPathCount, 'path')} fit the rule.`,
     plan.innerPointCount === 0
-      ? `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with the regressed martingale and no inner draws.`
+      ? `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, without inner draws.`
       : `${counted(plan.outerPathCount, 'fresh path')} carry the bounds, with ${counted(plan.innerPointCount, 'point')} of one step at every path and date.`,
   ];
   if (plan.nestedOuterPathCount > 0) {
@@ -19,8 +19,14 @@ export function planText(record: RunRecord, width: number): string {
       `${counted(plan.nestedOuterPathCount, 'path')} of their own carry the Andersen-Broadie bound, with ${counted(plan.nestedInnerPathCount, 'inner path')} each time one is needed.`,
     );
   }
+  if (record.status === 'stopped') {
+    const ruled = record.decidedBy === 'holder' ? record.lower : record.upper;
+    sentences.push(`The run was stopped when ${grouped(ruled.pathCount)} of them were finished.`);
+  }
   const bracketBound = record.decidedBy === 'holder' ? 'upper' : 'lower';
-  sentences.push(`The bracket's ${bracketBound} end comes from: ${methodWords(plan.upper)}.`);
+  const beside =
+    plan.upper === 'regressed' && plan.innerPointCount > 0 ? '; the points serve the rule and the bound beside it' : '';
+  sentences.push(`The bracket's ${bracketBound} end comes from: ${methodWords(plan.upper)}${beside}.`);
   if (pilot === null) {
     sentences.push('There was no pilot: the outer and inner counts were given.');
   } else if (isWithoutNoise(pilot.expectedWidth, record.lower.value)) {

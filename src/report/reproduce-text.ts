@@ -26,7 +26,8 @@ export function reproduceText(record: RunRecord, recordPath: string | null, widt
   const needs = [
     recordPath === null ? 'RECORD is this run as `--json` prints it or `--run-dir` keeps it.' : '',
     `Scenario sha256 ${sha256.slice(0, 16)}…, tarry ${record.versions.tarry}, Node ${record.versions.node}.`,
-    'The number of workers does not matter.',
+    record.status === 'stopped' ? 'This run was stopped: a replay finishes the plan, so its digits differ.' : '',
+    'Workers, interpreter and fit memory do not matter.',
   ];
   return `${command}\n${paragraph(needs.filter(Boolean).join(' '), width)}`;
 }

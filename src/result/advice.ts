@@ -86,20 +86,26 @@ function rankLoss({ basisIsAutomatic, dates }: Measures): Finding | null {
 function wideGap({ gap, lower, plan, basisIsAutomatic }: Measures): Finding {
   const share = gap.value === 0 ? 0 : gap.value / Math.abs(lower.value);
   const text = `The gap between the bounds is ${percent(share)} of the value.`;
-  if (!(share > wideGapShare)) return { passed: text };
+  if (!(share > wideGapShare)) return { passed: share < 0 ? 'The bounds lie closer than their error.' : text };
   return {
     doubt: advice('wide-gap', {
       what: text,
       why: 'The gap is what the fitted rule and martingale miss. More outer paths do not close it.',
       mend:
-        plan.innerPointCount === 0
-          ? 'Leave `inner` out of `counts`, so that the one-step martingale is taken off.'
+        plan.upper === 'regressed'
+          ? takeOneStep(plan)
           : basisIsAutomatic
             ? `Raise \`counts: { fit: … }\` under method above ${paths(plan.fitPathCount)}, or try \`upper: andersen-broadie\`.`
             : 'Use `basis: auto`, or add columns that tell when holding is worth more.',
       evidence: { gap: gap.value, share },
     }),
   };
+}
+
+/** What closes the gap of a bracket that the regressed martingale makes. */
+function takeOneStep({ innerPointCount }: Plan): string {
+  const lines = innerPointCount === 0 ? '`upper: regressed` and `inner: 0`' : '`upper: regressed`';
+  return `Take ${lines} out of method, so that the one-step martingale makes the bound.`;
 }
 
 function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
@@ -125,7 +131,7 @@ function effort({ plan, lower, upper }: Measures): Finding {
   if (enough) return { passed: `The error bars rest on ${paths(smallest)} paths or more.` };
   return {
     doubt: advice('effort-too-small', {
-      what: `The bounds rest on ${paths(smallest)} outer paths with ${innerPointCount} inner points each.`,
+      what: `The bounds rest on ${paths(smallest)} outer paths with ${innerPointCount} inner ${innerPointCount === 1 ? 'point' : 'points'} each.`,
       why: `Below ${fewestOuterPaths} paths a 95% interval may cover less than 95%; below ${fewestInnerPoints} inner points the upper bound is mostly noise.`,
       mend: 'Leave `counts` under method out, so that a pilot chooses them, or raise `outer` and `inner`.',
       evidence: { outerPathCount: smallest, innerPointCount },
@@ -146,14 +152,14 @@ function rareExercise({ lower, exercisedPathCount }: Measures): Finding {
   return {
     doubt: advice('effort-too-small', {
       what: `The rule exercises on only ${paths(exercisedPathCount)} of the ${paths(lower.pathCount)} outer paths.`,
-      why: `The value rests on rare paths: a payoff with a probability up to ${percent(3 / lower.pathCount)} may not have shown at all, and the 95% interval may be too narrow and too low.`,
+      why: `The value rests on rare paths: a payoff with a probability up to ${percent(Math.min(1, 3 / lower.pathCount))} may not have shown at all, and the 95% interval may be too narrow and too low.`,
       mend: 'Raise `counts: { outer: … }` under method until some hundred paths exercise.',
       evidence: { exercisedPathCount, outerPathCount: lower.pathCount },
     }),
   };
 }
 
-function width({ bracketWidth, wantedWidth, gap, lower, upper }: Measures): Finding | null {
+function width({ plan, bracketWidth, wantedWidth, gap, lower, upper }: Measures): Finding | null {
   if (wantedWidth === null) return null;
   const figures = `${bracketWidth.toPrecision(3)} where ${wantedWidth.toPrecision(3)} was wanted`;
   if (bracketWidth <= wantedWidth) return { passed: `The bracket is as narrow as wanted: ${figures}.` };
@@ -164,9 +170,11 @@ function width({ bracketWidth, wantedWidth, gap, lower, upper }: Measures): Find
       what: `The bracket is ${figures}; most of it is ${stuck} (gap ${gap.value.toPrecision(2)}, noise ${noise.toPrecision(2)}).`,
       why: 'The bracket is valid as it stands; it was not drawn again until it looked narrow, since that would make it too often wrong.',
       mend:
-        gap.value > noise
-          ? 'Improve `basis`, or raise `counts: { fit: …, inner: … }` under method.'
-          : 'Ask for the same `bracket width` with a larger --budget, or raise `counts: { outer: … }` under method.',
+        gap.value > noise && plan.upper === 'regressed'
+          ? takeOneStep(plan)
+          : gap.value > noise
+            ? 'Improve `basis`, or raise `counts: { fit: …, inner: … }` under method.'
+            : 'Ask for the same `bracket width` with a larger --budget, or raise `counts: { outer: … }` under method.',
       evidence: { bracketWidth, wantedWidth, gap: gap.value, noise },
     }),
   };

@@ -1,6 +1,7 @@
 import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
 import type { Block } from './block.js';
 import { type BlockRange, type FitStore, forEachBlock, loadPaths } from './fit-store.js';
+import { NotFinite } from './not-finite.js';
 import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
 
@@ -32,7 +33,7 @@ export function sweepValues(block: Block, store: FitStore, rule: Rule, date: num
     loadPaths(block, store, index, date);
     block.evaluate(date, rule, firstPath);
     interpreter.accumulateGram(layout.basis, columns.length, block.lanes, sums.gram);
-    if (!hasFiniteSquares(sums.gram)) block.checkBasis(date, firstPath);
+    if (!hasFiniteSquares(sums.gram)) refuseColumns(block, sums.gram, date, firstPath);
     interpreter.accumulateProducts(layout.basis, columns.length, layout.value, 1, block.lanes, sums.products);
     response = mergeMoments(response, interpreter.moments(layout.value, block.lanes));
   });
@@ -95,6 +96,20 @@ function sweepProducts(
     response = mergeMoments(response, interpreter.moments(stage, lanes));
   });
   return { ...sums, response };
+}
+
+/** Says which basis column is not finite, or too large for its square to be. */
+function refuseColumns(block: Block, gram: Float64Array, date: number, firstPath: number): never {
+  block.checkBasis(date, firstPath);
+  const { columns, times } = block.programs;
+  const { name, line } = columns.find((_, row) => !Number.isFinite(gram[(row * (row + 3)) / 2]))!;
+  throw new NotFinite({
+    what: `the square of the basis column ${name}`,
+    line,
+    path: firstPath,
+    date,
+    time: times[date]!,
+  });
 }
 
 /** Whether the sums of squares, the diagonal of the triangle, are finite: if they are, so is every value behind them. */

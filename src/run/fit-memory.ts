@@ -8,6 +8,9 @@ import { slotLength } from '../rule/fit-store.js';
 import { checkpointCount, type PathKeeping, segmentCount, slotCount, workFactor } from '../rule/path-keeping.js';
 import type { Programs } from '../rule/programs.js';
 
+/** Fit paths for each column below which a smaller fit is no advice. */
+const fitPathsPerColumn = 100;
+
 /** Bytes for the fit's paths when nobody says. */
 export const defaultFitMemoryBytes = 512e6;
 
@@ -19,19 +22,20 @@ export type KeepingOutcome =
 /**
  * Decides before a run which of the fit's paths stay in memory.
  *
- * @param fitMemoryBytes what they may take; undefined for the default
- * @fails refuses with `fit-memory-too-small` if not even two dates fit
+ * @param fitMemoryBytes what they may take; undefined for the default, or two dates if they need more
+ * @fails refuses with `fit-memory-too-small` if not even two dates fit into what is given
  */
 export function decideKeeping(
   programs: Programs,
   fitPathCount: number,
   fitMemoryBytes: number | undefined,
 ): KeepingOutcome {
-  const budget = fitMemoryBytes ?? defaultFitMemoryBytes;
   const dateCount = programs.times.length - 1;
+  const least = leastSlotCount(dateCount) * slotBytes(programs, fitPathCount);
+  const budget = fitMemoryBytes ?? Math.max(defaultFitMemoryBytes, least);
   const keeping = chooseKeeping(dateCount, Math.floor(budget / slotBytes(programs, fitPathCount)));
   if (keeping !== null) return { kind: 'fits', keeping };
-  return { kind: 'refused', messages: [tooSmall(programs, fitPathCount, budget, fitMemoryBytes !== undefined)] };
+  return { kind: 'refused', messages: [tooSmall(programs, fitPathCount, budget)] };
 }
 
 /** Bytes of the fit's paths in memory. */
@@ -55,22 +59,24 @@ function slotBytes(programs: Programs, fitPathCount: number): number {
   return slotLength(programs, fitPathCount) * Float64Array.BYTES_PER_ELEMENT;
 }
 
-function tooSmall(programs: Programs, fitPathCount: number, budget: number, isGiven: boolean): Message {
+function tooSmall(programs: Programs, fitPathCount: number, budget: number): Message {
   const slots = leastSlotCount(programs.times.length - 1);
   const leastBytes = slots * slotBytes(programs, fitPathCount);
   const bytesOfBlock = slots * slotBytes(programs, blockLanes);
   const mostPaths = Math.floor(budget / bytesOfBlock) * blockLanes;
-  const raise = isGiven ? 'Write' : 'Give';
-  const lower = mostPaths > 0 ? `, or \`counts: { fit: ${mostPaths} }\` under method` : '';
+  const lower =
+    mostPaths >= fitPathsPerColumn * programs.columns.length
+      ? `, or \`counts: { fit: ${mostPaths} }\` under method`
+      : '';
   return mistake('fit-memory-too-small', {
     what: `The paths of the fit may take ${memory(budget)} of memory; ${memory(leastBytes)} is the least they need.`,
-    why: `${slots === 1 ? 'One date' : 'Two dates'} of all ${fitPathCount} paths must be in memory at once, however often the rest is computed again.`,
-    mend: `${raise} \`--fit-memory ${memoryToGive(leastBytes)}\` or more${lower}.`,
+    why: `${slots === 1 ? 'One date' : 'Two dates'} of all ${fitPathCount.toLocaleString('en-US')} paths must be there at once, whatever is computed again.`,
+    mend: `Write \`--fit-memory ${memoryToGive(leastBytes)}\` or more${lower}.`,
     evidence: {
       fitMemoryBytes: budget,
       leastBytes,
       fitPathCount,
-      ...(isGiven ? { override: '--fit-memory' } : {}),
+      override: '--fit-memory',
     },
   });
 }

@@ -109,10 +109,11 @@ export function makeRecord(findings: RunFindings): RunRecord {
 
 /** Gap of the bracket's own two bounds: path by path where both stand on the same paths. */
 function gapOf({ outer, nested }: RunFindings, method: BoundMethod): Estimate {
-  if (method === 'regressed' || outer.upper.count === 0) return estimateOf(outer.regressedGap);
-  if (method !== 'andersen-broadie' || nested === null) return estimateOf(outer.gap);
-  const [upper, lower] = [estimateOf(nested.upper), estimateOf(outer.lower)];
-  return estimateFrom(upper.value - lower.value, jointError(upper, lower));
+  if (method === 'andersen-broadie' && nested !== null) {
+    const [upper, lower] = [estimateOf(nested.upper), estimateOf(outer.lower)];
+    return estimateFrom(upper.value - lower.value, jointError(upper, lower));
+  }
+  return estimateOf(method === 'regressed' ? outer.regressedGap : outer.gap);
 }
 
 function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {

@@ -12,6 +12,7 @@ import { openContext } from './fit-size.js';
 import { runFit } from './fit-stage.js';
 import { forecastOf } from './forecast.js';
 import { judgeCounts, judgePlan } from './judge-counts.js';
+import { judgeOptions } from './judge-options.js';
 import { makeRecord } from './make-record.js';
 import { notFiniteMessage } from './not-finite-message.js';
 import type { Progress, ValueOptions, ValueOutcome } from './options.js';
@@ -29,6 +30,8 @@ export async function valueScenario(
   options: ValueOptions,
   environment: Environment,
 ): Promise<ValueOutcome> {
+  const wrongOptions = judgeOptions(options);
+  if (wrongOptions.length > 0) return { kind: 'refused', messages: wrongOptions };
   const outcome = prepare(source, options);
   if (outcome.kind === 'refused') return outcome;
   const { scenario, programs } = outcome.prepared;

@@ -97,7 +97,7 @@ function refuseCounts(
 ): void {
   for (const key of ['outer', 'inner']) {
     const entry = entryOf(under(method, 'counts'), key);
-    if (entry === undefined) continue;
+    if (entry === undefined || isNoInnerPoints(key, entry.value)) continue;
     reading.findings.add({
       code: 'width-and-counts',
       at: entry.keySpan,
@@ -109,6 +109,11 @@ function refuseCounts(
   }
 }
 
+/** `inner: 0` is a choice of method, not an effort: the outer paths still reach a width. */
+function isNoInnerPoints(key: string, value: TreeNode): boolean {
+  return key === 'inner' && value.kind === 'scalar' && Number(value.text) === 0;
+}
+
 /** A budget is spent on the counts that are left free; with none left it would be passed over. */
 function refuseBudget(method: TreeNode | undefined, reading: Reading): void {
   const entries = ['outer', 'inner'].map((key) => entryOf(under(method, 'counts'), key));
@@ -118,7 +123,7 @@ function refuseBudget(method: TreeNode | undefined, reading: Reading): void {
     at: entries[0]!.keySpan,
     what: '`outer` and `inner` are fixed here, which contradicts `--budget`.',
     why: 'A time is kept by choosing these counts; with both stated the budget would be passed over.',
-    mend: 'Take one of the counts away, or leave `--budget` out.',
+    mend: 'Take `outer` away, or leave `--budget` out.',
     evidence: { override: '--budget' },
   });
 }

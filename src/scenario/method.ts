@@ -29,7 +29,7 @@ export function readMethod(reading: Reading): Method | null {
   const outerPathCount = count(counts, 'outer', 'method.counts.outer', mostPaths, fewestOuterPaths);
   const innerPointCount = count(counts, 'inner', 'method.counts.inner', mostInnerPoints, 0);
   const upper = readUpper(node, reading);
-  if (innerPointCount === 0 && upper === 'one-step') refuseNoInnerPoints(counts, reading);
+  if (innerPointCount === 0 && upper === 'one-step') refuseNoInnerPoints(node, reading);
   const nested = under(node, 'upper');
   const nestedOuterPathCount = count(nested, 'outer', 'method.upper.outer', mostPaths, fewestOuterPaths);
   const nestedInnerPathCount = count(nested, 'inner', 'method.upper.inner', mostInnerPoints);
@@ -134,14 +134,18 @@ function refuseIdleCounts(node: TreeNode | undefined, stated: UpperMethod, readi
 }
 
 /** The one-step bound is a mean over inner points. */
-function refuseNoInnerPoints(counts: TreeNode | undefined, { findings }: Reading): void {
+function refuseNoInnerPoints(method: TreeNode | undefined, { findings, overrides }: Reading): void {
+  const isOverride = overrides.upper !== undefined;
+  const origin = isOverride ? ', from `--upper`,' : under(method, 'upper') === undefined ? ', the default,' : '';
   findings.add({
-    code: 'value-out-of-range',
-    at: under(counts, 'inner')!.span,
-    what: '`inner` is 0, but the upper bound `one-step` is made with inner points.',
-    why: 'Without them only the regressed martingale can be taken off the payoffs.',
-    mend: 'Write `upper: regressed` beside `counts`, or a whole number from 1 up.',
-    evidence: { inner: 0, upper: 'one-step' },
+    code: isOverride ? 'bad-override' : 'value-out-of-range',
+    at: under(under(method, 'counts'), 'inner')!.span,
+    what: `\`inner\` is 0, but the upper bound \`one-step\`${origin} is made with inner points.`,
+    why: 'Without them the bracket can be made by the regressed martingale or by the nested bound only.',
+    mend: isOverride
+      ? 'Leave `--upper` out, or write an `inner` from 1 up.'
+      : 'Write `upper: regressed` (or `andersen-broadie`) under method, or an `inner` from 1 up.',
+    evidence: { inner: 0, upper: 'one-step', ...(isOverride ? { override: '--upper' } : {}) },
   });
 }
 

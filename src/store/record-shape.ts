@@ -10,7 +10,7 @@ const method = z.enum(['rule', 'one-step', 'andersen-broadie', 'regressed', 'two
 export const planShape = z.object({
   fitPathCount: pathCount,
   outerPathCount: pathCount,
-  innerPointCount: z.int().min(1).max(MOST_INNER),
+  innerPointCount: z.int().min(0).max(MOST_INNER),
   nestedOuterPathCount: z.int().min(0).max(MOST_PATHS),
   nestedInnerPathCount: z.int().min(0).max(MOST_INNER),
   upper: z.enum(['one-step', 'andersen-broadie', 'regressed']),

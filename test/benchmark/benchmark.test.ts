@@ -28,10 +28,10 @@ test('the yardstick does the work it names: its value agrees with the same work 
 });
 
 test('a profile names every kernel that a stage spends time in, and its shares are shares', async () => {
-  const stages = await profileScenario(
-    lots({ method: ['counts: { fit: 4096, outer: 1024, inner: 8 }'] }),
-    thisMachine(),
-  );
+  const text = lots({ method: ['counts: { fit: 4096, outer: 1024, inner: 8 }'] });
+  const outcome = await profileScenario(text, 'lots.yaml', thisMachine());
+  if (outcome.kind !== 'measured') throw new Error(JSON.stringify(outcome));
+  const { stages } = outcome;
   expect(stages.map(({ stage }) => stage)).toEqual(['fit', 'bounds']);
   for (const { kernels, seconds } of stages) {
     expect(seconds).toBeGreaterThan(0);

@@ -52,7 +52,7 @@ describe('--fit-memory', () => {
     const few = ['-', '--fit-memory', '70KB'];
     const checked = await tarry(['check', ...few], smallScenario);
     expect(checked.stdout.replace(/\s+/g, ' ')).toContain(
-      'The paths of the fit are kept in memory (66.6 KB) for 1 date at a time, and recomputed elsewhere: 1.33 times the work of simulating each once.',
+      'The paths of the fit are kept in memory (66.6 KB) in segments of 1 date, and recomputed when another segment is needed: they are simulated 1.33 times instead of once.',
     );
     const valued = await tarry(['value', ...few, '--json', '--workers', '0'], smallScenario);
     expect(JSON.parse(valued.stdout).paths).toMatchObject({ kept: 'segments', segmentDates: 1, bytes: 66_560 });

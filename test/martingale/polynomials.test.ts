@@ -1,11 +1,11 @@
 import { expect, test } from 'vitest';
-import { type Moments, mergeMoments, momentsOf, noMoments } from '#built/numeric/moments.js';
+import { type Moments, mergeMoments, noMoments } from '#built/numeric/moments.js';
 import { wasmInterpreters } from '#built/program/wasm-interpreter.js';
 import { Block } from '#built/rule/block.js';
 import { loadKernels } from '#built/workers/machine.js';
 import { programsOf } from '../fitted.js';
 import { lots } from '../scenario-texts.js';
-import { limit, standardisedError } from '../statistics.js';
+import { limit, momentsOf, standardisedError } from '../statistics.js';
 
 const blockCount = 60;
 

@@ -1,7 +1,8 @@
 import { mean, sampleVariance } from 'simple-statistics';
 import { expect, test } from 'vitest';
 import { estimateOf } from '#built/numeric/estimate.js';
-import { mergeMoments, momentsOf, noMoments, standardErrorOf, varianceOf } from '#built/numeric/moments.js';
+import { mergeMoments, noMoments, standardErrorOf, varianceOf } from '#built/numeric/moments.js';
+import { momentsOf } from '../statistics.js';
 
 const values = Float64Array.from({ length: 101 }, (_, i) => ((i * 37) % 101) / 7 + 1e6);
 

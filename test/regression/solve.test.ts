@@ -56,3 +56,33 @@ test('one constant column alone gives the mean; an empty problem gives zeros', (
   expect(nothing.kept).toEqual([]);
   expect([...solveResponses(nothing, new Float64Array(2), 1)]).toEqual([0, 0]);
 });
+
+test('nearly dependent columns are solved to the digits of back substitution', () => {
+  const count = 8;
+  const [first, ...noise] = randomColumns(count, 'near');
+  // Column k differs from the first by a few parts in 100,000: pivots near the tolerance.
+  const columns = [first!, ...noise.map((column) => column.map((value, row) => first![row]! + 4e-5 * value))];
+  const responses = randomColumns(2, 'responses');
+  const { gram, products } = sums(columns, responses);
+  const compressed = compressColumns(gram, count);
+  expect(compressed.dropped).toEqual([]);
+  const ours = solveResponses(compressed, products, 2);
+  const { triangle, kept, scales } = compressed;
+  for (let r = 0; r < 2; r++) {
+    const right = kept.map((column) => products[r * count + column]! * scales[column]!);
+    const forward: number[] = [];
+    right.forEach((value, i) => {
+      const sum = forward.reduce((total, known, k) => total - triangle[k]![i]! * known, value);
+      forward.push(sum / triangle[i]![i]!);
+    });
+    const solution = new Array<number>(count).fill(0);
+    for (let i = count - 1; i >= 0; i--) {
+      const sum = solution.reduce((total, known, k) => (k > i ? total - triangle[i]![k]! * known : total), forward[i]!);
+      solution[i] = sum / triangle[i]![i]!;
+    }
+    const largest = Math.max(...solution.map(Math.abs));
+    kept.forEach((column, i) => {
+      expect(Math.abs(ours[r * count + column]! / scales[column]! - solution[i]!) / largest).toBeLessThan(1e-9);
+    });
+  }
+});

@@ -54,12 +54,10 @@ describe('the text of a check', () => {
 
   it('says whether the paths are kept or recomputed, and by which factor the simulation grows', () => {
     const words = (text: string) => text.replace(/\s+/g, ' ');
-    expect(words(checkReport(findings))).toContain(
-      'All paths of the fit are kept in memory (29.2 MB), so that each is simulated once.',
-    );
+    expect(words(checkReport(findings))).toContain('All paths of the fit are kept in memory (29.2 MB).');
     const paths = { kept: 'segments', segmentDates: 4, checkpointCount: 5, workFactor: 1.8333, bytes: 9e6 } as const;
     expect(words(checkReport({ ...findings, forecast: { ...findings.forecast, paths } }))).toContain(
-      'The paths of the fit are kept in memory (9 MB) for 4 dates at a time and at 5 checkpoints, and recomputed elsewhere: 1.83 times the work of simulating each once.',
+      'The paths of the fit are kept in memory (9 MB) in segments of 4 dates, with 5 checkpoints, and recomputed when another segment is needed: they are simulated 1.83 times instead of once.',
     );
   });
 

@@ -79,7 +79,7 @@ describe('reading a plan', () => {
     ['fitPathCount', 1.5],
     ['outerPathCount', -1],
     ['outerPathCount', 1e12],
-    ['innerPointCount', 0],
+    ['innerPointCount', -1],
     ['innerPointCount', '16'],
     ['nestedInnerPathCount', -1],
     ['upper', 'sideways'],
