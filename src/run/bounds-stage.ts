@@ -12,8 +12,9 @@ export interface StageSums<S> {
   readonly isComplete: boolean;
 }
 
-/** Steps of one block that a parcel should at least hold, so that messages stay small beside the work. */
-const smallestParcelSteps = 128;
+/** Steps of one block that a parcel should hold, so that messages stay small beside the work and a stop is heard. */
+const fewestSteps = 32;
+const mostSteps = 512;
 
 /** Values the outer paths with both bounds. */
 export async function runOuter(
@@ -25,8 +26,9 @@ export async function runOuter(
   onProgress: (progress: Progress) => void,
 ): Promise<StageSums<OuterSums>> {
   const dateCount = programs.times.length - 1;
-  const blocksPerParcel = Math.max(1, Math.floor(smallestParcelSteps / (dateCount * (counts.innerPointCount + 1))));
-  const jobs = cutIntoParcels(counts.outerPathCount, blocksPerParcel).map((range) => ({
+  const stepsOfBlock = dateCount * (counts.innerPointCount + 1);
+  const [fewest, most] = [fewestSteps, mostSteps].map((steps) => Math.max(1, Math.floor(steps / stepsOfBlock)));
+  const jobs = cutIntoParcels(counts.outerPathCount, fewest!, most!).map((range) => ({
     kind: 'outer' as const,
     work: { purpose, pathCount: counts.outerPathCount, innerPointCount: counts.innerPointCount },
     range,

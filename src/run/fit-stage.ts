@@ -11,13 +11,14 @@ import { cutIntoParcels, runParcels, Stopped } from './parcels.js';
 
 /** Blocks of a parcel at least: some thousand paths, so that the sums that travel are small beside the work. */
 const fewestBlocks = 8;
-/** Parcels at most: enough for any number of workers to share the work evenly. */
-const mostParcels = 64;
+/** Blocks of a parcel at most, unless there are very many: a stop is heard, and progress seen, between parcels. */
+const mostBlocks = 128;
+const mostLargeParcels = 64;
 
 /** Parcels of the fit; they depend on the count of paths alone. */
 export function fitParcels(pathCount: number): BlockRange[] {
-  const blocksPerParcel = Math.ceil(Math.ceil(pathCount / blockLanes) / mostParcels);
-  return cutIntoParcels(pathCount, Math.max(fewestBlocks, blocksPerParcel));
+  const blockCount = Math.ceil(pathCount / blockLanes);
+  return cutIntoParcels(pathCount, fewestBlocks, Math.max(mostBlocks, Math.ceil(blockCount / mostLargeParcels)));
 }
 
 /** Fits the rule on the executor. @fails throws Stopped, and NotFinite from the paths */
