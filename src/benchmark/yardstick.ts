@@ -35,6 +35,8 @@ export interface WorkersLine {
 const warmUpPathCount = 65_536;
 /** Least seconds of one worker's work behind a comparison of workers. */
 const leastSeconds = 5;
+/** A median of fewer would be at the mercy of a single disturbance. */
+const fewestRounds = 5;
 
 /** Measures the calling thread, through the same programs, interpreter and conductors as a valuation. */
 export async function runYardstick(pathCount: number, environment: Environment): Promise<YardstickLine> {
@@ -92,7 +94,7 @@ async function compare(
   several: () => Promise<number>,
 ): Promise<{ seconds: number; speedup: number }> {
   const rounds: { one: number; several: number }[] = [];
-  for (let total = 0; total < leastSeconds; total += rounds.at(-1)!.one)
+  for (let total = 0; total < leastSeconds || rounds.length < fewestRounds; total += rounds.at(-1)!.one)
     rounds.push({ one: await one(), several: await several() });
   return {
     seconds: median(rounds.map((round) => round.several)),
