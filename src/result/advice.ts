@@ -31,7 +31,7 @@ const paths = (count: number) => count.toLocaleString('en-US');
 const percent = (share: number) => `${(100 * share).toPrecision(2)}%`;
 
 /** Fit paths for each column below which the regression error alone is a visible part of the gap; common practice. */
-const fitPathsPerColumn = 100;
+export const fitPathsPerColumn = 100;
 /** Gap, as a share of the value, beyond which a better basis is worth more than more paths; common practice. */
 const wideGapShare = 0.01;
 /** Outer paths below which the normal interval is not to be trusted; common practice. */

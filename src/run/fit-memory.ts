@@ -2,14 +2,12 @@ import { mistake } from '../messages/build.js';
 import { memory, memoryToGive } from '../messages/figures.js';
 import type { Message } from '../messages/message.js';
 import { blockLanes } from '../program/program.js';
+import { fitPathsPerColumn } from '../result/advice.js';
 import type { PathsFinding } from '../result/record.js';
 import { chooseKeeping, leastSlotCount } from '../rule/choose-keeping.js';
 import { slotLength } from '../rule/fit-store.js';
 import { checkpointCount, type PathKeeping, segmentCount, slotCount, workFactor } from '../rule/path-keeping.js';
 import type { Programs } from '../rule/programs.js';
-
-/** Fit paths for each column below which a smaller fit is no advice. */
-const fitPathsPerColumn = 100;
 
 /** Bytes for the fit's paths when nobody says. */
 export const defaultFitMemoryBytes = 512e6;
