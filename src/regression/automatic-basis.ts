@@ -2,6 +2,7 @@ import type { Graph, Node } from '../program/graph.js';
 import { hermitePolynomial } from '../program/hermite.js';
 import { multiIndices } from '../program/multi-indices.js';
 import type { Basis, Column } from './basis.js';
+import type { BasisSize } from './basis-size.js';
 
 /** A standardised variable: mean about 0 and spread about 1 on the fit's paths at each date. */
 export interface StandardVariable {
@@ -10,11 +11,13 @@ export interface StandardVariable {
   readonly leading: boolean;
 }
 
-/** Total degree of the polynomials for a count of leading variables; beyond the list, no products. */
-const degreeForCount = [0, 16, 6, 4, 4, 3, 2, 2, 2];
-
-/** The same for the integrands of the martingale, whose many coefficients need columns without long tails. */
-const integrandDegreeForCount = [0, 16, 4, 3, 2, 2, 2, 2, 2];
+/**
+ * Spreads from the mean beyond which a variable stays where it is, in products of low and of high total degree.
+ *
+ * High powers of an unbounded variable grow so fast that the few farthest paths would rule the regression; low ones
+ * must go on, since the continuation value does: held at three spreads, they left twice the gap with five lots.
+ */
+const boundInSpreads = { low: 5, high: 3 } as const;
 
 /**
  * The automatic basis: products of Hermite polynomials of the standardised variables up to a total degree, and columns
@@ -27,10 +30,9 @@ export function automaticBasis(
   graph: Graph,
   variables: readonly StandardVariable[],
   payoffs: readonly Column[],
+  { degree, integrandDegree }: BasisSize,
 ): Basis {
   const leading = variables.filter((variable) => variable.leading);
-  const degree = degreeForCount[leading.length] ?? 0;
-  const integrandDegree = integrandDegreeForCount[leading.length] ?? 0;
   const products = multiIndices(leading.length, degree);
   const alone = degree === 0 ? variables : variables.filter((variable) => !variable.leading);
   const low = products.filter((exponents) => totalDegree(exponents) <= integrandDegree);
@@ -38,12 +40,15 @@ export function automaticBasis(
   const first = [
     { name: '1', node: graph.constant(1) },
     ...low.map((exponents) => productColumn(graph, leading, exponents)),
-    ...alone.map(({ name, node }) => ({ name: `H1(${name})`, node })),
+    ...alone.map(({ name, node }) => ({ name: `H1(${name})`, node: bounded(graph, node, boundInSpreads.low) })),
     ...payoffs,
   ];
   const rest = [
     ...high.map((exponents) => productColumn(graph, leading, exponents)),
-    ...alone.map(({ name, node }) => ({ name: `H2(${name})`, node: hermitePolynomial(graph, 2, node) })),
+    ...alone.map(({ name, node }) => ({
+      name: `H2(${name})`,
+      node: hermitePolynomial(graph, 2, bounded(graph, node, boundInSpreads.low)),
+    })),
   ];
   return { columns: [...first, ...rest], integrandColumnCount: first.length };
 }
@@ -52,12 +57,25 @@ function totalDegree(exponents: readonly number[]): number {
   return exponents.reduce((total, exponent) => total + exponent, 0);
 }
 
+/** Highest total degree that counts as low: fewer variables leave more paths for each far corner. */
+function lowDegree(variableCount: number): number {
+  return variableCount <= 2 ? 4 : variableCount <= 4 ? 3 : 2;
+}
+
 function productColumn(graph: Graph, variables: readonly StandardVariable[], exponents: readonly number[]): Column {
+  const bound = totalDegree(exponents) <= lowDegree(variables.length) ? boundInSpreads.low : boundInSpreads.high;
   const factors = exponents.flatMap((exponent, index) =>
     exponent === 0 ? [] : [{ exponent, variable: variables[index]! }],
   );
   return {
     name: factors.map(({ exponent, variable }) => `H${exponent}(${variable.name})`).join(' × '),
-    node: graph.product(factors.map(({ exponent, variable }) => hermitePolynomial(graph, exponent, variable.node))),
+    node: graph.product(
+      factors.map(({ exponent, variable }) => hermitePolynomial(graph, exponent, bounded(graph, variable.node, bound))),
+    ),
   };
+}
+
+function bounded(graph: Graph, variable: Node, bound: number): Node {
+  const fromAbove = graph.apply('minimum', variable, graph.constant(bound));
+  return graph.apply('maximum', fromAbove, graph.constant(-bound));
 }

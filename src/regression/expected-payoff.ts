@@ -4,12 +4,6 @@ import { normalQuantile } from '../program/elementary.js';
 import type { Graph, Node } from '../program/graph.js';
 import type { CheckedModel } from '../scenario/model.js';
 
-/**
- * Pairs of a point and its mirror image over which an expected payoff is averaged. Fewer with several drivers: the
- * largest or the sum of several bends more softly already (measured, see DEVELOPERS.md).
- */
-const pairCounts = { oneDriver: 8, severalDrivers: 4 } as const;
-
 /** Drivers beyond which the averages would cost several times as much as all other columns together. */
 export const largestDriverCount = 40;
 
@@ -29,9 +23,10 @@ export function writeExpectedPayoff(
   drivers: readonly Driver[],
   states: readonly Node[],
   duration: Node,
+  pairCount: number,
   payoff: (states: readonly Node[]) => Node,
 ): Node {
-  const values = evenPoints(drivers.length).map((point) => {
+  const values = evenPoints(drivers.length, pairCount).map((point) => {
     const innovations = point.map((draw) => graph.constant(draw));
     return payoff(writeStep(model, graph, drivers, states, innovations, duration));
   });
@@ -39,9 +34,8 @@ export function writeExpectedPayoff(
 }
 
 /** Standard normal points, evenly spread and symmetric about 0. @shape 2 × pairs, dimensions */
-function evenPoints(dimensionCount: number): number[][] {
+function evenPoints(dimensionCount: number, pairCount: number): number[][] {
   const steps = primes(dimensionCount).map((prime) => Math.sqrt(prime));
-  const pairCount = dimensionCount === 1 ? pairCounts.oneDriver : pairCounts.severalDrivers;
   return Array.from({ length: pairCount }, (_, index) => {
     const point = steps.map((step) => {
       const position = (index + 0.5) * step;

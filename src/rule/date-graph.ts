@@ -5,6 +5,7 @@ import { Graph, type Node } from '../program/graph.js';
 import { lower } from '../program/lower.js';
 import { automaticBasis } from '../regression/automatic-basis.js';
 import type { Basis, Column } from '../regression/basis.js';
+import { basisSizes } from '../regression/basis-size.js';
 import { largestDriverCount, writeExpectedPayoff } from '../regression/expected-payoff.js';
 import { statedBasis } from '../regression/stated-basis.js';
 import { type DriverGroup, type Variable, writeVariables } from '../regression/variables.js';
@@ -24,17 +25,27 @@ export interface DateGraph {
   readonly basis: Basis;
   readonly variables: readonly Variable[];
   readonly uniformCount: number;
+  /** Sizes that the basis could have; 1 where the scenario states it. */
+  readonly sizeCount: number;
+  /** Paths of the fit for each column, when nobody says. */
+  readonly pathsPerColumn: number;
 }
 
-/** Spreads from the mean beyond which a standardised variable stays where it is. */
-const boundInSpreads = 3;
+/** Paths of the fit for each column of a basis that the scenario states. */
+const statedPathsPerColumn = 800;
 
-/** Writes amounts and basis of a date. */
+/**
+ * Writes amounts and basis of a date.
+ *
+ * @param size which of the automatic basis' sizes, from 0 on
+ * @fails throws if there is no such size
+ */
 export function writeDateGraph(
   model: CheckedModel,
   drivers: readonly Driver[],
   groups: readonly DriverGroup[],
   layout: DriverLayout,
+  size: number,
 ): DateGraph {
   const graph = new Graph();
   const states = drivers.map((_, index) => graph.column(layout.next + index));
@@ -44,14 +55,25 @@ export function writeDateGraph(
   const amounts = writeAmounts(graph, model.contract, meanings, factor);
   if (model.method.basis !== 'auto') {
     const basis = statedBasis(model.method.basis, graph, meanings);
-    return { graph, amounts, basis, variables: [], uniformCount: dateUniforms.firstStandard };
+    return {
+      graph,
+      amounts,
+      basis,
+      variables: [],
+      uniformCount: dateUniforms.firstStandard,
+      sizeCount: 1,
+      pathsPerColumn: statedPathsPerColumn,
+    };
   }
   const variables = writeVariables(graph, drivers, groups, states);
   const standardised = variables.map(({ name, node, leading }, index) => {
     const mean = graph.uniform(dateUniforms.firstStandard + 2 * index);
     const inverseSpread = graph.uniform(dateUniforms.firstStandard + 2 * index + 1);
-    return { name, leading, node: bounded(graph, graph.multiply(graph.subtract(node, mean), inverseSpread)) };
+    return { name, leading, node: graph.multiply(graph.subtract(node, mean), inverseSpread) };
   });
+  const sizes = basisSizes(variables.filter(({ leading }) => leading).length);
+  const basisSize = sizes[size];
+  if (basisSize === undefined) throw new Error(`the automatic basis has no size ${size}`);
   const payoffs: Column[] = [{ name: 'payoff', node: amounts.payoff }];
   if (drivers.length <= largestDriverCount) {
     const expectedAfter = (uniform: number) => {
@@ -60,21 +82,21 @@ export function writeDateGraph(
         const later = meaningsOfState(model, graph, drivers, nodes, graph.add(clock, duration));
         return lower(model.contract.payoff.tree, graph, later);
       };
-      const expected = writeExpectedPayoff(model, graph, drivers, states, duration, payoffAt);
+      const expected = writeExpectedPayoff(model, graph, drivers, states, duration, basisSize.pairCount, payoffAt);
       return writeScaled(graph, model.contract, expected, factor);
     };
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
     payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });
   }
-  const basis = automaticBasis(graph, standardised, payoffs);
-  return { graph, amounts, basis, variables, uniformCount: dateUniforms.firstStandard + 2 * variables.length };
-}
-
-/**
- * Holds a standardised variable between bounds. Polynomials of an unbounded one grow so fast that the few farthest
- * paths would rule the regression, and their errors would be carried back from date to date.
- */
-function bounded(graph: Graph, variable: Node): Node {
-  const fromAbove = graph.apply('minimum', variable, graph.constant(boundInSpreads));
-  return graph.apply('maximum', fromAbove, graph.constant(-boundInSpreads));
+  const basis = automaticBasis(graph, standardised, payoffs, basisSize);
+  const uniformCount = dateUniforms.firstStandard + 2 * variables.length;
+  return {
+    graph,
+    amounts,
+    basis,
+    variables,
+    uniformCount,
+    sizeCount: sizes.length,
+    pathsPerColumn: basisSize.pathsPerColumn,
+  };
 }

@@ -6,7 +6,7 @@ import type { Programs } from './programs.js';
 /**
  * The fit's paths and values, on shared memory.
  *
- * A sweep writes values only from the paths and the rule, so that a sweep which broke off can be run again.
+ * What a sweep reads it does not write, so that a sweep which broke off can be run again.
  */
 export interface FitStore {
   readonly pathCount: number;
@@ -14,10 +14,16 @@ export interface FitStore {
   readonly keeping: PathKeeping;
   /** Drivers at the dates in memory, then at the checkpoints. @shape blocks × slots × drivers × columnStride */
   readonly paths: Float64Array;
-  /** Fitted value of each path at the date after the one in work, in money of today. @shape paths */
+  /** What each path brings from a date on, in money of today, odd dates after even ones. @shape 2 × paths in whole blocks */
   readonly values: Float64Array;
   /** Direction of search at the date in work. @shape columns, then polynomials × integrand columns */
   readonly direction: Float64Array;
+}
+
+/** What the paths of the block in work bring from a date on; a view. */
+export function valuesAt({ values }: FitStore, date: number, firstPath: number, lanes: number): Float64Array {
+  const first = (date % 2) * (values.length / 2) + firstPath;
+  return values.subarray(first, first + lanes);
 }
 
 /** A run of whole blocks; the smallest unit that is handed to a worker. */

@@ -1,6 +1,6 @@
 import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
 import type { Block } from './block.js';
-import { type BlockRange, type FitStore, forEachBlock, loadPaths } from './fit-store.js';
+import { type BlockRange, type FitStore, forEachBlock, loadPaths, valuesAt } from './fit-store.js';
 import { NotFinite } from './not-finite.js';
 import type { Programs } from './programs.js';
 import type { Rule } from './rule.js';
@@ -17,8 +17,8 @@ export interface SweepSums {
 }
 
 /**
- * First sweep at a date: values each path at the following date with the rule fitted there, and sums the normal
- * equations of that on the basis at this date.
+ * First sweep at a date: carries what each path brings from the following date on back to there, with the rule fitted
+ * there, and sums the normal equations of that on the basis at this date.
  */
 export function sweepValues(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
   const { interpreter } = block;
@@ -26,10 +26,8 @@ export function sweepValues(block: Block, store: FitStore, rule: Rule, date: num
   const sums = emptySums(block.programs, 'gram');
   let response = noMoments;
   forEachBlock(block, range, store.pathCount, (index, firstPath) => {
-    loadPaths(block, store, index, date + 1);
-    block.evaluate(date + 1, rule, firstPath);
-    block.value(date + 1, rule, firstPath);
-    store.values.set(block.column(layout.value), firstPath);
+    carryBack(block, store, rule, date + 1, index, firstPath);
+    valuesAt(store, date + 1, firstPath, block.lanes).set(block.column(layout.value));
     loadPaths(block, store, index, date);
     block.evaluate(date, rule, firstPath);
     interpreter.accumulateGram(layout.basis, columns.length, block.lanes, sums.gram);
@@ -40,12 +38,35 @@ export function sweepValues(block: Block, store: FitStore, rule: Rule, date: num
   return { ...sums, response };
 }
 
+/**
+ * Writes to `value` what each path brings from a date on, as `Programs.carry` says; on the last date the terminal
+ * amount. What it brings later is in the store, and its martingale is the rule's regressed increment.
+ */
+function carryBack(block: Block, store: FitStore, rule: Rule, date: number, index: number, firstPath: number): void {
+  const { layout, times, carry } = block.programs;
+  const isLast = date === times.length - 1;
+  if (!isLast) {
+    loadPaths(block, store, index, date);
+    block.advance();
+    block.draw('fit', index, date, 0);
+    block.polynomials();
+  }
+  loadPaths(block, store, index, date);
+  block.evaluate(date, rule, firstPath);
+  block.value(date, rule, firstPath);
+  if (isLast) return;
+  block.ruleIntegrands(date, rule);
+  block.column(layout.stage).set(valuesAt(store, date + 1, firstPath, block.lanes));
+  block.addIncrement(-1, layout.stage);
+  block.run(carry);
+}
+
 /** Sums the products of basis and basis × polynomial with what the continuation value leaves of the next value. */
 export function sweepResiduals(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
   const { columns, layout, rest } = block.programs;
   return sweepProducts(block, store, rule, date, range, (firstPath) => {
     block.combineBasis(rule.continuation, date * columns.length, layout.stage);
-    block.column(layout.value).set(store.values.subarray(firstPath, firstPath + block.lanes));
+    block.column(layout.value).set(valuesAt(store, date + 1, firstPath, block.lanes));
     block.run(rest);
   });
 }

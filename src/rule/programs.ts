@@ -33,6 +33,8 @@ export interface Programs {
   readonly polynomials: Program;
   /** From payoff and the regression's continuation value in `hold`: its proved floor put in, and the larger to `value`. */
   readonly value: Program;
+  /** What the fit carries back along a path: what the rule brings, drawn towards `hold`; from and to as `buildCarry` says. */
+  readonly carry: Program;
   /** `value` less what the first column of the stages holds, to the latter. */
   readonly rest: Program;
   /** Response × polynomial for each polynomial, from the first column of the stages to those after it. */
@@ -43,6 +45,11 @@ export interface Programs {
   readonly integrandColumnCount: number;
   readonly polynomialNames: readonly string[];
   readonly variableCount: number;
+  /** Which of the automatic basis' sizes this is, from 0 on, and how many there are; 0 of 1 for a stated basis. */
+  readonly basisSize: number;
+  readonly basisSizeCount: number;
+  /** Paths of the fit for each column, when nobody says. */
+  readonly pathsPerColumn: number;
   /** Times of the grid: today first, then the decision dates. */
   readonly times: readonly number[];
   readonly discountFactors: readonly number[];
@@ -52,15 +59,21 @@ export interface Programs {
   readonly payoffLine: number | null;
 }
 
-/** Compiles the programs of a model. */
-export function buildPrograms(model: CheckedModel): Programs {
+/**
+ * Compiles the programs of a model.
+ *
+ * @param basisSize which of the automatic basis' sizes
+ * @fails throws if there is no such size
+ */
+export function buildPrograms(model: CheckedModel, basisSize = 0): Programs {
   const drivers = listDrivers(model);
   const groups = groupDrivers(model, drivers);
-  const { graph, amounts, basis, variables, uniformCount } = writeDateGraph(
+  const { graph, amounts, basis, variables, uniformCount, sizeCount, pathsPerColumn } = writeDateGraph(
     model,
     drivers,
     groups,
     layOutDrivers(drivers.length),
+    basisSize,
   );
   const innovations = writePolynomialGraph(drivers, groups);
   const layout = layOut(drivers.length, basis.columns.length, variables.length, innovations.polynomials.length);
@@ -93,6 +106,7 @@ export function buildPrograms(model: CheckedModel): Programs {
       'polynomials',
     ),
     value: buildValue(layout, floor),
+    carry: buildCarry(layout, times.length - 1),
     rest: buildRest(layout),
     responses: buildResponses(layout, innovations.polynomials.length),
     drivers: drivers.map(({ name, start, family, law }) => ({
@@ -105,6 +119,9 @@ export function buildPrograms(model: CheckedModel): Programs {
     integrandColumnCount: basis.integrandColumnCount,
     polynomialNames: innovations.polynomials.map(({ name }) => name),
     variableCount: variables.length,
+    basisSize,
+    basisSizeCount: sizeCount,
+    pathsPerColumn,
     times,
     discountFactors: discountFactors(contract, constants, times),
     todayIsDecisionDate: dates[0] === 0,
@@ -122,8 +139,8 @@ export function withoutMartingale(programs: Programs): Programs {
 
 /** All programs, in the order in which a block loads them. */
 export function programList(programs: Programs): Program[] {
-  const { step, evaluate, amounts, variables, polynomials, value, rest, responses } = programs;
-  return [step, evaluate, amounts, variables, polynomials, value, rest, responses];
+  const { step, evaluate, amounts, variables, polynomials, value, carry, rest, responses } = programs;
+  return [step, evaluate, amounts, variables, polynomials, value, carry, rest, responses];
 }
 
 /** Columns of the workspace that all programs together need. */
@@ -149,6 +166,31 @@ function buildValue({ payoff, hold, value, scratch }: Layout, floor: 0 | null): 
   const larger = graph.apply('maximum', graph.column(payoff), held);
   const floored = floor === null ? [] : [{ node: held, column: hold }];
   return compile(graph, [...floored, { node: larger, column: value }], 0, scratch, 'value');
+}
+
+/** Dates, as a share of all, over which the fit looks ahead along its own paths before it trusts the fitted value. */
+const lookAheadShare = 1 / 3;
+
+/**
+ * Turns `value`, the fitted one at a date, into what the date before regresses on: where the rule exercises the payoff,
+ * elsewhere C + λ (G - C), with G in the first column of the stages what the path brings later less its martingale, and
+ * λ = 1 - 1 / (dates looked ahead). For few dates λ is 0 and `value` stays.
+ *
+ * Regressing on the fitted value alone projects the bend of max(payoff, C) anew at each date, and over hundreds of dates
+ * these errors add up in one direction; what the path brings knows no C in between, but carries the noise of all later
+ * steps.
+ *
+ * @source Sutton (1988), Machine Learning 3, 9-44: temporal differences, with the λ of that paper
+ */
+function buildCarry({ hold, value, stage, scratch }: Layout, dateCount: number): Program {
+  const share = Math.max(0, 1 - 1 / (lookAheadShare * dateCount));
+  const graph = new Graph();
+  const held = graph.column(hold);
+  const fitted = graph.column(value);
+  const ahead = graph.subtract(graph.column(stage), held);
+  const carried = graph.add(held, graph.multiply(graph.constant(share), ahead));
+  const node = graph.apply('select', graph.apply('less', held, fitted), fitted, carried);
+  return compile(graph, [{ node, column: value }], 0, scratch, 'carry');
 }
 
 function buildRest({ value, stage, scratch }: Layout): Program {

@@ -6,14 +6,13 @@ import type { Programs } from '../rule/programs.js';
 import { emptyRule, sharedNumbers } from '../rule/rule.js';
 import type { JobContext } from '../workers/jobs.js';
 
-const pathsPerColumn = 800;
 const smallestFitPathCount = 32_768;
 const largestFitPathCount = 262_144;
 const fitPathStep = 4096;
 
 /** Paths of the fit when nobody says: in proportion to the columns, within limits, in whole parcels. */
 export function defaultFitPathCount(programs: Programs): number {
-  const wanted = Math.ceil((pathsPerColumn * programs.columns.length) / fitPathStep) * fitPathStep;
+  const wanted = Math.ceil((programs.pathsPerColumn * programs.columns.length) / fitPathStep) * fitPathStep;
   return Math.min(largestFitPathCount, Math.max(smallestFitPathCount, wanted));
 }
 
@@ -29,7 +28,7 @@ export function openContext(
     pathCount,
     keeping,
     paths: sharedNumbers(slotCount(keeping) * slotLength(programs, pathCount)),
-    values: sharedNumbers(Math.ceil(pathCount / blockLanes) * blockLanes),
+    values: sharedNumbers(2 * Math.ceil(pathCount / blockLanes) * blockLanes),
     direction: sharedNumbers(programs.columns.length + programs.polynomialNames.length * programs.integrandColumnCount),
   };
   return { programs, seed, kernels, rule: emptyRule(programs), store };

@@ -39,7 +39,7 @@ export function peakMemoryBytes(
     workerCount * threadBytes +
     instructionCount * (instructionBytes + workerCount * threadInstructionBytes) +
     pathBytes +
-    (counts.fitPathCount + parcelCount * numberCount + rule + busyCount * workspace) * numberBytes
+    (2 * counts.fitPathCount + parcelCount * numberCount + rule + busyCount * workspace) * numberBytes
   );
 }
 
