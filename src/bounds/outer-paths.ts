@@ -2,7 +2,8 @@ import { noMoments } from '../numeric/moments.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-store.js';
 import type { Rule } from '../rule/rule.js';
-import { moveUniforms, type OuterKind, type OuterPrograms } from './outer-programs.js';
+import { type InnerPurpose, sumInnerPoints } from './inner-points.js';
+import type { OuterKind, OuterPrograms } from './outer-programs.js';
 import { mergeOuterSums, noOuterSums, type OuterSums } from './outer-sums.js';
 
 /** Which draws a set of outer paths uses. */
@@ -20,11 +21,11 @@ export interface OuterWork {
  * Both bounds on one set of outer paths, with the one-step martingale of the fitted value.
  *
  * The increment over a step is v(X′) - E[v(X′) | X], v the larger of payoff and fitted continuation value. The
- * conditional mean is estimated from inner points drawn afresh for every path and date, today included, with the
- * regressed increment as control. What the estimates mean:
+ * conditional mean is estimated from inner points spread evenly and drawn afresh for every path and date, today included,
+ * with the regressed increment as control (`inner-points.ts`). What the estimates mean:
  *
- * - lower: mean of payoff less martingale where the rule exercises. The inner noise is independent of the path given
- *   the state, so its mean is the value of the rule: biased low for the best value by what the rule misses, only.
+ * - lower: mean of payoff less martingale where the rule exercises. The inner noise has mean 0 and is independent of the
+ *   path given the state, so its mean is the value of the rule: biased low for the best value by what the rule misses, only.
  * - upper: mean of the largest payoff less martingale. Noise inside a maximum can only raise its mean: biased high.
  *
  * Without inner points the regressed martingale, exact whatever its coefficients, serves both.
@@ -57,6 +58,7 @@ function runBlock(
   const { times, todayIsDecisionDate } = block.programs;
   const { purpose, innerPointCount } = work;
   const kind: OuterKind = innerPointCount > 0 ? 'one-step' : 'regressed';
+  const innerPurpose: InnerPurpose = purpose === 'outer' ? 'inner' : 'pilot inner';
   const last = times.length - 1;
   const exerciseCounts = times.map(() => 0);
   const chooseAt = (date: number) => {
@@ -73,7 +75,8 @@ function runBlock(
     const arrives = date + 1;
     block.ruleIntegrands(date, rule);
     block.advance();
-    if (innerPointCount > 0) sumInnerPoints(block, outer, rule, work, { index, firstPath, date });
+    if (innerPointCount > 0)
+      sumInnerPoints(block, outer, rule, innerPointCount, { purpose: innerPurpose, index, firstPath, date });
     block.draw(purpose, index, date, 0);
     block.polynomials();
     block.column(outer.columns.regressedStep).fill(0);
@@ -93,41 +96,6 @@ function openPaths(block: Block, { columns }: OuterPrograms): void {
   for (const column of [regressed, martingale, halfMartingale, lower, plain]) block.column(column).fill(0);
   for (const column of [upper, halfUpper, regressedUpper]) block.column(column).fill(Number.NEGATIVE_INFINITY);
   block.column(running).fill(1);
-}
-
-interface InnerPlace {
-  readonly index: number;
-  readonly firstPath: number;
-  readonly date: number;
-}
-
-/**
- * Sums the fitted value after one step from `state`, less the regressed increment, over inner points that are fresh for
- * each lane: over all of them and over the first half. Leaves `next` and the basis overwritten.
- */
-function sumInnerPoints(
-  block: Block,
-  { columns, addInner, move }: OuterPrograms,
-  rule: Rule,
-  { purpose, innerPointCount }: OuterWork,
-  { index, firstPath, date }: InnerPlace,
-): void {
-  const { layout } = block.programs;
-  const half = Math.ceil(innerPointCount / 2);
-  block.column(columns.innerSum).fill(0);
-  for (let point = 0; point < innerPointCount; point++) {
-    block.draw(purpose === 'outer' ? 'inner' : 'pilot inner', index, date, point);
-    block.polynomials();
-    block.step(date, firstPath);
-    block.evaluate(date + 1, rule, firstPath);
-    block.value(date + 1, rule, firstPath);
-    block.addIncrement(-1, layout.value);
-    block.run(addInner);
-    if (point + 1 === half) block.interpreter.copy(columns.innerSum, columns.innerHalfSum, 1);
-  }
-  const { uniforms } = block.loaded(move['one-step']);
-  uniforms[moveUniforms.inversePoints] = 1 / innerPointCount;
-  uniforms[moveUniforms.inverseHalfPoints] = 1 / half;
 }
 
 function sumPaths(block: Block, outer: OuterPrograms, kind: OuterKind, exerciseCounts: number[]): OuterSums {

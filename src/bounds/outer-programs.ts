@@ -1,6 +1,7 @@
 import { compile, type Output } from '../program/compile.js';
 import { Graph, type Node } from '../program/graph.js';
 import type { Program } from '../program/program.js';
+import { singleStageColumnCount } from '../rule/layout.js';
 import type { Programs } from '../rule/programs.js';
 
 /** Columns of the stages in which outer paths keep what they carry along. */
@@ -14,6 +15,8 @@ export interface OuterColumns {
   /** Sums of the fitted value over the inner points, over all and over the first half. */
   readonly innerSum: number;
   readonly innerHalfSum: number;
+  /** Shifts of the inner points' lattice at the step in work, one column for each innovation. */
+  readonly shifts: number;
   /** What the rule brings, with the martingale taken off and without. */
   readonly lower: number;
   readonly plain: number;
@@ -66,6 +69,7 @@ export function buildOuterPrograms(programs: Programs): OuterPrograms {
     running: stage + 11,
     exercised: stage + 12,
     unused: stage + 13,
+    shifts: stage + singleStageColumnCount,
   };
   return {
     columns,

@@ -12,7 +12,7 @@ export interface LoadedProgram {
 export interface Room {
   readonly columnCount: number;
   readonly programs: readonly Program[];
-  /** Most coefficients that one `combine`, sums that one `accumulate…`, or keys that one draw will bring. */
+  /** Most coefficients that one `combine`, sums that one `accumulate…`, keys or offsets that one draw will bring. */
   readonly numberCount: number;
 }
 
@@ -43,6 +43,27 @@ export interface Interpreter {
     firstColumn: number,
     lanes: number,
   ): void;
+  /**
+   * Fills columns with the uniforms (k + ½) 2⁻⁵² of the same streams, of which `drawNormals` takes the quantiles.
+   *
+   * @param keys low and high half of each column's key. @shape columns × 2
+   */
+  drawUniforms(
+    keys: Int32Array,
+    block: number,
+    date: number,
+    replicate: number,
+    firstColumn: number,
+    lanes: number,
+  ): void;
+  /**
+   * Writes one point of a lattice that is shifted afresh in every lane, as standard normals: the quantile of
+   * `latticeUniform(shift, offset)`, column by column.
+   *
+   * @param firstShift columns of uniforms, one for each offset
+   * @param offsets of the point, each from 0 up to 1 and a multiple of 2⁻⁵². @shape columns
+   */
+  latticeNormals(firstShift: number, offsets: Float64Array, firstColumn: number, lanes: number): void;
   /**
    * Writes Σ coefficient × column over `count` columns from `firstColumn`, in their order, to each target.
    *

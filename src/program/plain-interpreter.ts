@@ -1,10 +1,11 @@
 import type { Moments } from '../numeric/moments.js';
 import { exp, log, normalCumulative, normalQuantile, power } from './elementary.js';
 import type { Interpreter, LoadedProgram, Room } from './interpreter.js';
+import { latticeUniform } from './lattice-uniform.js';
 import { operations } from './operations.js';
 import { columnStride, instructionWidth, type Program } from './program.js';
 import { equal, less, lessOrEqual, maximum, minimum, select } from './scalar.js';
-import { drawUniforms } from './stream.js';
+import { drawUniforms as drawStream } from './stream.js';
 import { uniformCodeOf } from './uniform-code.js';
 
 interface PlainProgram extends LoadedProgram {
@@ -46,13 +47,28 @@ export function createPlainInterpreter({ columnCount, programs }: Room): Interpr
       memory.copyWithin(startOf(toColumn), startOf(fromColumn), startOf(fromColumn + count));
     },
 
+    drawUniforms(keys, block, date, replicate, firstColumn, lanes) {
+      for (let i = 0; 2 * i < keys.length; i++) {
+        const key = { low: keys[2 * i]!, high: keys[2 * i + 1]! };
+        drawStream(key, block, date, replicate, memory, startOf(firstColumn + i), lanes);
+      }
+    },
+
     drawNormals(keys, block, date, replicate, firstColumn, lanes) {
+      this.drawUniforms(keys, block, date, replicate, firstColumn, lanes);
       for (let i = 0; 2 * i < keys.length; i++) {
         const start = startOf(firstColumn + i);
-        const key = { low: keys[2 * i]!, high: keys[2 * i + 1]! };
-        drawUniforms(key, block, date, replicate, memory, start, lanes);
         for (let at = start; at < start + lanes; at++) memory[at] = normalQuantile(memory[at]!);
       }
+    },
+
+    latticeNormals(firstShift, offsets, firstColumn, lanes) {
+      offsets.forEach((offset, i) => {
+        const shifts = startOf(firstShift + i);
+        const out = startOf(firstColumn + i);
+        for (let lane = 0; lane < lanes; lane++)
+          memory[out + lane] = normalQuantile(latticeUniform(memory[shifts + lane]!, offset));
+      });
     },
 
     combine(firstColumn, count, coefficients, offset, firstTarget, targetCount, lanes) {

@@ -35,6 +35,8 @@ export function timeInterpreters(make: InterpreterMaker, now: () => number): Tim
     run: (program, lanes) => timed(`program: ${program.name}`, lanes, () => inner.run(program, lanes)),
     copy: (...words) => timed('copies', 0, () => inner.copy(...words)),
     drawNormals: (...words) => timed('normal draws', words[5], () => inner.drawNormals(...words)),
+    drawUniforms: (...words) => timed('shifts of lattices', words[5], () => inner.drawUniforms(...words)),
+    latticeNormals: (...words) => timed('points of lattices', words[3], () => inner.latticeNormals(...words)),
     combine: (...words) =>
       timed(`combinations of columns, ${words[5]} at once`, words[6], () => inner.combine(...words)),
     addProducts: (...words) => timed('regressed increments', words[5], () => inner.addProducts(...words)),

@@ -83,6 +83,18 @@ function createWasmInterpreter(compiled: CompiledKernels, room: Room): Interpret
       kernels.drawNormals(numbersStart, keys.length / 2, block, date, replicate, spare, to, lengthOf(lanes));
     },
 
+    drawUniforms(keys, block, date, replicate, firstColumn, lanes) {
+      halfKeys.set(keys);
+      const to = addressOf(firstColumn);
+      kernels.drawUniformColumns(numbersStart, keys.length / 2, block, date, replicate, to, lengthOf(lanes));
+    },
+
+    latticeNormals(firstShift, offsets, firstColumn, lanes) {
+      numbers.set(offsets);
+      const [shifts, to] = [addressOf(firstShift), addressOf(firstColumn)];
+      kernels.latticeNormals(shifts, numbersStart, offsets.length, spare, to, lengthOf(lanes));
+    },
+
     combine(firstColumn, count, coefficients, offset, firstTarget, targetCount, lanes) {
       numbers.set(coefficients.subarray(offset, offset + count * targetCount));
       const [from, to] = [addressOf(firstColumn), addressOf(firstTarget)];

@@ -26,6 +26,16 @@ export interface Kernels {
     to: number,
     length: number,
   ): void;
+  drawUniformColumns(
+    keys: number,
+    count: number,
+    block: number,
+    date: number,
+    replicate: number,
+    to: number,
+    length: number,
+  ): void;
+  latticeNormals(shifts: number, offsets: number, count: number, spare: number, to: number, length: number): void;
   combine(
     columns: number,
     count: number,

@@ -1,3 +1,4 @@
+import { latticeOffsets } from '../paths/lattice.js';
 import { stepUniforms } from '../paths/step-program.js';
 import { type Purpose, streamKeys } from '../paths/stream-keys.js';
 import type { Interpreter, InterpreterMaker, LoadedProgram } from '../program/interpreter.js';
@@ -26,6 +27,8 @@ export class Block {
   readonly #loaded: Map<Program, LoadedProgram>;
   readonly #keys = new Map<Purpose, Int32Array>();
   readonly #driverRuns: readonly DriverRun[];
+  /** Of one point of a lattice, for each innovation. */
+  readonly #offsets: Float64Array;
 
   /** @param stagePrograms what the stages run beside the model's own programs */
   constructor(
@@ -42,6 +45,7 @@ export class Block {
     this.interpreter = makeInterpreter({ columnCount, programs: all, numberCount: largestNumberCount(programs) });
     this.#loaded = new Map(all.map((program, index) => [program, this.interpreter.programs[index]!]));
     this.#driverRuns = findDriverRuns(programs);
+    this.#offsets = new Float64Array(programs.drivers.length);
   }
 
   /** The values of one column on the lanes in use; a view, changed by whatever runs next. */
@@ -80,6 +84,20 @@ export class Block {
   draw(purpose: Purpose, block: number, date: number, replicate: number): void {
     const { innovations } = this.programs.layout;
     this.interpreter.drawNormals(this.#keysOf(purpose), block, date, replicate, innovations, this.lanes);
+  }
+
+  /**
+   * Draws the shifts of a lattice for the step that leaves a date: one for every lane and innovation, to columns from the
+   * first on. They are the stream of replicate 0, so a purpose serves either these or plain draws.
+   */
+  drawShifts(purpose: Purpose, block: number, date: number, firstColumn: number): void {
+    this.interpreter.drawUniforms(this.#keysOf(purpose), block, date, 0, firstColumn, this.lanes);
+  }
+
+  /** Takes one point of the lattice, shifted as the columns say, as the innovations of the step. */
+  drawLatticePoint(point: number, firstShift: number): void {
+    latticeOffsets(point, this.#offsets);
+    this.interpreter.latticeNormals(firstShift, this.#offsets, this.programs.layout.innovations, this.lanes);
   }
 
   /** Moves the drivers from `state` at a date to `next` at the following one. */

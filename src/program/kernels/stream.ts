@@ -95,6 +95,49 @@ export function drawNormals(
   }
 }
 
+/** Writes uniforms to columns, each from the stream of its own key. */
+export function drawUniformColumns(
+  keys: usize,
+  count: i32,
+  block: u32,
+  date: u32,
+  replicate: u32,
+  to: usize,
+  length: usize,
+): void {
+  for (let column = 0; column < count; column++, keys += 8, to += columnBytes)
+    drawUniforms(load<u32>(keys), load<u32>(keys, 4), block, date, replicate, to, to + length);
+}
+
+/** Writes one point of a lattice as standard normals, shifted by columns of uniforms; `uniforms` is a column to work in. */
+export function latticeNormals(
+  shifts: usize,
+  offsets: usize,
+  count: i32,
+  uniforms: usize,
+  to: usize,
+  length: usize,
+): void {
+  for (let column = 0; column < count; column++, offsets += 8, shifts += columnBytes, to += columnBytes) {
+    writeFolded(shifts, f64x2.splat(load<f64>(offsets) - 1), uniforms, length);
+    const tailEnd = writeMiddle(uniforms, to, length);
+    writeTails(uniforms, to, tailEnd);
+  }
+}
+
+/** Shifts and folds a coordinate, as `../lattice-uniform.ts` says. */
+function writeFolded(shifts: usize, offset: v128, to: usize, length: usize): void {
+  const one = number(Named.one);
+  for (let at: usize = 0; at < length; at += 32) {
+    const x = f64x2.add(v128.load(shifts + at), offset);
+    const y = f64x2.add(v128.load(shifts + at, 16), offset);
+    const xFold = f64x2.abs(f64x2.sub(f64x2.abs(f64x2.add(x, x)), one));
+    const yFold = f64x2.abs(f64x2.sub(f64x2.abs(f64x2.add(y, y)), one));
+    v128.store(to + at, f64x2.sub(one, xFold));
+    v128.store(to + at, f64x2.sub(one, yFold), 16);
+  }
+}
+
 /** Writes the quantiles as if all lay in the middle, and lists those that do not; returns the end of the list. */
 function writeMiddle(uniforms: usize, to: usize, length: usize): usize {
   let listed = tailList;
