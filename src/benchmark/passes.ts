@@ -66,7 +66,7 @@ function passesOn(
     },
     async valueOnce() {
       const started = now();
-      const { sums } = await runOuter(executor, programs, 'outer', counts, undefined, () => {});
+      const { sums } = await runOuter(executor, programs, 'outer', counts, 1, undefined, () => {});
       return { seconds: (now() - started) / 1000, lower: estimateOf(sums.lower) };
     },
   };

@@ -1,9 +1,8 @@
 import type { Message } from '../messages/message.js';
 import { type KernelTime, timeInterpreters } from '../program/timed-interpreter.js';
 import { runNested, runOuter } from '../run/bounds-stage.js';
-import { countsBeforePilot } from '../run/counts.js';
+import { openCandidates } from '../run/candidates.js';
 import type { Environment } from '../run/environment.js';
-import { decideKeeping } from '../run/fit-memory.js';
 import { openContext } from '../run/fit-size.js';
 import { runFit } from '../run/fit-stage.js';
 import { choosePlan, fixedPlan } from '../run/pilot-stage.js';
@@ -24,22 +23,21 @@ export type ProfileOutcome =
   | { readonly kind: 'measured'; readonly stages: readonly StageProfile[] }
   | { readonly kind: 'refused'; readonly messages: readonly Message[] };
 
+/** Which size of the basis is profiled, where there are several: the one that fixed counts take. */
+const profiledSize = 1;
+
 /** Runs a scenario in the calling thread with a clock around every kernel. */
 export async function profileScenario(source: string, path: string, environment: Environment): Promise<ProfileOutcome> {
   const outcome = prepare(source, { path });
   if (outcome.kind === 'refused') return outcome;
-  const { scenario, programs } = outcome.prepared;
+  const { scenario, programs: smallest } = outcome.prepared;
   const { now } = environment;
-  const counts = countsBeforePilot(programs, scenario.model.method);
-  const decided = decideKeeping(programs, counts.fitPathCount, undefined);
-  if (decided.kind === 'refused') return decided;
-  const context = openContext(
-    programs,
-    scenario.model.seed,
-    counts.fitPathCount,
-    environment.kernels('wasm'),
-    decided.keeping,
-  );
+  const opened = openCandidates(scenario.model, smallest, {}, environment, 0);
+  if (opened.kind === 'refused') return opened;
+  const candidate = opened.candidates[Math.min(profiledSize, opened.candidates.length - 1)]!;
+  const { programs, counts, keeping } = candidate;
+  const { seed } = scenario.model;
+  const context = openContext(programs, seed, counts.fitPathCount, environment.kernels('wasm'), keeping);
   const { make, take } = timeInterpreters(interpreterMaker(context.kernels), now);
   const executor = createInProcessExecutor(createJobRunner(context, make));
   const options = { onProgress: () => {} };
@@ -56,13 +54,15 @@ export async function profileScenario(source: string, path: string, environment:
     profiles.push({ stage, seconds: milliseconds / 1000, kernels });
     return result;
   };
-  await staged('fit', () => runFit(executor, programs, context.rule, context.store, undefined, () => {}));
+  const fits = await staged('fit', () => runFit(executor, programs, context.rule, context.store, undefined, () => {}));
   const { plan } =
-    fixedPlan(scenario, options, programs) ??
-    (await staged('pilot', () => choosePlan(executor, scenario, programs, options, environment, now())));
+    fixedPlan(scenario, options, candidate) ??
+    (await staged('pilot', () =>
+      choosePlan({ candidate, context, executor, fits }, scenario, options, environment, now()),
+    ));
   await staged('bounds', async () => {
-    await runOuter(executor, programs, 'outer', plan, undefined, () => {});
-    if (plan.nestedOuterPathCount > 0) await runNested(executor, plan, undefined, () => {});
+    await runOuter(executor, programs, 'outer', plan, plan.round, undefined, () => {});
+    if (plan.nestedOuterPathCount > 0) await runNested(executor, plan, plan.round, undefined, () => {});
   });
   return { kind: 'measured', stages: profiles };
 }

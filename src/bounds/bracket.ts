@@ -1,5 +1,6 @@
 import { estimateOf, type MeanEstimate, standardErrorsIn95 } from '../numeric/estimate.js';
 import type { Moments } from '../numeric/moments.js';
+import { normalQuantile } from '../program/elementary.js';
 
 /** An estimated bound with the paths behind it. */
 export interface Bound extends MeanEstimate {
@@ -17,14 +18,29 @@ export function boundOf(moments: Moments, sign: 1 | -1): Bound {
   return { ...asHeld(moments, sign), pathCount: moments.count };
 }
 
+/** Probability that the bracket of a round misses: half as much in each further round, so that all of them stay rare. */
+export function errorProbability(round: number): number {
+  return 0.05 * 2 ** (1 - round);
+}
+
+/** Standard errors from each bound to its end of a round's bracket. */
+export function standardErrorsInRound(round: number): number {
+  return round === 1 ? standardErrorsIn95 : normalQuantile(1 - errorProbability(round) / 2);
+}
+
 /**
- * The 95% bracket: from the low end of the lower bound's interval to the high end of the upper bound's.
+ * The bracket: from the low end of the lower bound's interval to the high end of the upper bound's.
  *
- * Each end is one-sided at 2.5%, so the value lies between them with at least 95%, whatever links the two estimates.
+ * With 1.96 standard errors each end is one-sided at 2.5%, so the value lies between them with at least 95%, whatever
+ * links the two estimates. A further round is drawn only if the one before was too wide, and its ends lie farther out.
  */
-export function bracketOf(lower: MeanEstimate, upper: MeanEstimate): { low: number; high: number } {
+export function bracketOf(
+  lower: MeanEstimate,
+  upper: MeanEstimate,
+  standardErrors: number,
+): { low: number; high: number } {
   return {
-    low: lower.value - standardErrorsIn95 * (lower.standardError ?? Number.POSITIVE_INFINITY),
-    high: upper.value + standardErrorsIn95 * (upper.standardError ?? Number.POSITIVE_INFINITY),
+    low: lower.value - standardErrors * (lower.standardError ?? Number.POSITIVE_INFINITY),
+    high: upper.value + standardErrors * (upper.standardError ?? Number.POSITIVE_INFINITY),
   };
 }

@@ -4,12 +4,9 @@ import type { Block } from '../rule/block.js';
 import type { Rule } from '../rule/rule.js';
 import { moveUniforms, type OuterPrograms } from './outer-programs.js';
 
-/** Which draws inner points use. */
-export type InnerPurpose = Extract<Purpose, 'inner' | 'pilot inner'>;
-
 /** Where inner points are asked for: the block, its first path, and the date that the step leaves. */
 export interface InnerPlace {
-  readonly purpose: InnerPurpose;
+  readonly purpose: Purpose;
   readonly index: number;
   readonly firstPath: number;
   readonly date: number;

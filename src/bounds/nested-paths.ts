@@ -1,4 +1,5 @@
 import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
+import { purposeInRound } from '../paths/stream-keys.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-store.js';
 import type { Rule } from '../rule/rule.js';
@@ -13,6 +14,8 @@ export interface NestedSums {
 
 /** What nested paths are asked for. */
 export interface NestedWork {
+  /** Each round of a run draws afresh; the first is 1. */
+  readonly round: number;
   readonly pathCount: number;
   readonly innerPathCount: number;
 }
@@ -46,12 +49,12 @@ export function runNestedPaths(
   block: Block,
   nested: NestedPrograms,
   rule: Rule,
-  { pathCount, innerPathCount }: NestedWork,
+  work: NestedWork,
   range: BlockRange,
 ): NestedSums {
   let total = noNestedSums;
-  forEachBlock(block, range, pathCount, (index, firstPath) => {
-    total = mergeNestedSums(total, runBlock(block, nested, rule, innerPathCount, { index, firstPath }));
+  forEachBlock(block, range, work.pathCount, (index, firstPath) => {
+    total = mergeNestedSums(total, runBlock(block, nested, rule, work, { index, firstPath }));
   });
   return total;
 }
@@ -61,13 +64,7 @@ interface BlockPlace {
   readonly firstPath: number;
 }
 
-function runBlock(
-  block: Block,
-  nested: NestedPrograms,
-  rule: Rule,
-  innerPathCount: number,
-  place: BlockPlace,
-): NestedSums {
+function runBlock(block: Block, nested: NestedPrograms, rule: Rule, work: NestedWork, place: BlockPlace): NestedSums {
   const { layout, times, todayIsDecisionDate } = block.programs;
   const { interpreter, driverCount, lanes } = block;
   const { columns } = nested;
@@ -91,7 +88,7 @@ function runBlock(
         block.value(date, rule, firstPath);
         block.run(nested.decide);
       } else block.column(columns.exercises).fill(0);
-      estimateContinuation(block, nested, rule, innerPathCount, { ...place, date });
+      estimateContinuation(block, nested, rule, work, { ...place, date });
     }
     if (date === 0) today = interpreter.moments(columns.continuation, lanes);
     else block.run(nested.move);
@@ -99,7 +96,7 @@ function runBlock(
     interpreter.copy(columns.continuation, columns.continuationBefore, 1);
     if (date < last) {
       interpreter.copy(columns.drivers, layout.state, driverCount);
-      block.draw('nested outer', index, date, 0);
+      block.draw(purposeInRound('nested outer', work.round), index, date, 0);
       block.step(date, firstPath);
     }
   }
@@ -111,7 +108,7 @@ function estimateContinuation(
   block: Block,
   nested: NestedPrograms,
   rule: Rule,
-  innerPathCount: number,
+  work: NestedWork,
   { index, firstPath, date: start }: BlockPlace & { readonly date: number },
 ): void {
   const { layout, times } = block.programs;
@@ -119,7 +116,7 @@ function estimateContinuation(
   const { columns } = nested;
   const last = times.length - 1;
   block.column(columns.continuation).fill(0);
-  for (let path = 0; path < innerPathCount; path++) {
+  for (let path = 0; path < work.innerPathCount; path++) {
     block.column(columns.running).fill(1);
     block.column(columns.increments).fill(0);
     interpreter.copy(columns.drivers, layout.next, driverCount);
@@ -128,7 +125,7 @@ function estimateContinuation(
       const arrives = date + 1;
       block.ruleIntegrands(date, rule);
       block.advance();
-      block.draw('nested inner', index, start * times.length + date, path);
+      block.draw(purposeInRound('nested inner', work.round), index, start * times.length + date, path);
       block.polynomials();
       block.addIncrement(1, columns.increments);
       block.step(date, firstPath);
@@ -138,6 +135,6 @@ function estimateContinuation(
     }
   }
   const { uniforms } = block.loaded(nested.average);
-  uniforms[0] = 1 / innerPathCount;
+  uniforms[0] = 1 / work.innerPathCount;
   block.run(nested.average);
 }

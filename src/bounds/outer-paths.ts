@@ -1,17 +1,19 @@
 import { noMoments } from '../numeric/moments.js';
+import { type Purpose, purposeInRound } from '../paths/stream-keys.js';
 import type { Block } from '../rule/block.js';
 import { type BlockRange, forEachBlock } from '../rule/fit-store.js';
 import type { Rule } from '../rule/rule.js';
-import { type InnerPurpose, sumInnerPoints } from './inner-points.js';
+import { sumInnerPoints } from './inner-points.js';
 import type { OuterKind, OuterPrograms } from './outer-programs.js';
 import { mergeOuterSums, noOuterSums, type OuterSums } from './outer-sums.js';
 
-/** Which draws a set of outer paths uses. */
-export type OuterPurpose = 'outer' | 'pilot';
+/** Which draws a set of outer paths uses; those of a bracket have rounds, from 1 on. */
+export type OuterPurpose = 'select' | 'pilot' | 'outer';
 
 /** What a set of outer paths is asked for. */
 export interface OuterWork {
   readonly purpose: OuterPurpose;
+  readonly round: number;
   readonly pathCount: number;
   /** Points of one step at every path and date; with none, the regressed martingale stands for the one-step one. */
   readonly innerPointCount: number;
@@ -56,9 +58,9 @@ function runBlock(
   firstPath: number,
 ): OuterSums {
   const { times, todayIsDecisionDate } = block.programs;
-  const { purpose, innerPointCount } = work;
+  const { innerPointCount } = work;
+  const purposes = purposesOf(work);
   const kind: OuterKind = innerPointCount > 0 ? 'one-step' : 'regressed';
-  const innerPurpose: InnerPurpose = purpose === 'outer' ? 'inner' : 'pilot inner';
   const last = times.length - 1;
   const exerciseCounts = times.map(() => 0);
   const chooseAt = (date: number) => {
@@ -76,8 +78,8 @@ function runBlock(
     block.ruleIntegrands(date, rule);
     block.advance();
     if (innerPointCount > 0)
-      sumInnerPoints(block, outer, rule, innerPointCount, { purpose: innerPurpose, index, firstPath, date });
-    block.draw(purpose, index, date, 0);
+      sumInnerPoints(block, outer, rule, innerPointCount, { purpose: purposes.inner, index, firstPath, date });
+    block.draw(purposes.outer, index, date, 0);
     block.polynomials();
     block.column(outer.columns.regressedStep).fill(0);
     block.addIncrement(1, outer.columns.regressedStep);
@@ -88,6 +90,11 @@ function runBlock(
     chooseAt(arrives);
   }
   return sumPaths(block, outer, kind, exerciseCounts);
+}
+
+function purposesOf({ purpose, round }: OuterWork): { outer: Purpose; inner: Purpose } {
+  if (purpose !== 'outer') return { outer: purpose, inner: `${purpose} inner` };
+  return { outer: purposeInRound('outer', round), inner: purposeInRound('inner', round) };
 }
 
 /** Puts the lanes of a block at the start: nothing taken off, nothing brought, all running. */

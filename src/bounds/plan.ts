@@ -8,24 +8,17 @@ export const pilotOuterPathCount = 1024;
 /** Inner points of the pilot; the first half of them is looked at apart. */
 export const pilotInnerPointCount = 32;
 
-const smallestOuterPathCount = 1024;
+const smallestOuterPathCount = 2048;
 const largestOuterPathCount = 4_000_000;
 /** From the pilot's own count up: fewer points were not tried, and their noise cannot be read off those that were. */
 const innerPointCounts = [32, 64, 128, 256, 512, 1024, 2048];
 
-/** Share of the wanted width that the plan aims at: the pilot's own figures are uncertain. */
-const aim = 0.85;
+/** Share of the wanted width that a plan aims at: the pilot's own figures are uncertain. */
+export const aim = 0.85;
 
 /** Width that is given away for less work where the wanted width, or all of a budget, is out of reach anyway. */
 const waste = 0.05;
 const rounding = 1e-9;
-
-/**
- * Steps of outer and inner paths that a plan may ask for when nobody set a budget.
- *
- * A fixed count and not a time, so that the plan does not depend on the machine.
- */
-export const defaultStepLimit = 400_000_000;
 
 /** What the pilot tells about a bracket made with any counts. */
 export interface PilotModel {
@@ -74,9 +67,13 @@ export function modelOfPilot(sums: OuterSums, innerPointCount: number, method: U
   };
 }
 
-/** Width of the bracket that counts are expected to give, in money. */
-export function expectedWidth(model: PilotModel, counts: Counts): number {
-  const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
+/**
+ * Width of the bracket that counts are expected to give, in money.
+ *
+ * @param standardErrors from each bound to its end of the bracket
+ */
+export function expectedWidth(model: PilotModel, counts: Counts, standardErrors = standardErrorsIn95): number {
+  const noise = standardErrors * (model.lowerStandardDeviation + model.upperStandardDeviation);
   return expectedGap(model, counts.innerPointCount) + noise / Math.sqrt(counts.outerPathCount);
 }
 
@@ -91,6 +88,8 @@ function squaredShare(innerPointCount: number): number {
 /** What a plan must keep to. */
 export interface PlanRequest {
   readonly wantedWidth: number;
+  /** From each bound to its end of the bracket. */
+  readonly standardErrors: number;
   /** Steps allowed, over all outer paths, dates and inner points. */
   readonly stepLimit: number;
   readonly dateCount: number;
@@ -109,11 +108,16 @@ export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
   const innerCounts = request.innerPointCount === null ? innerPointCounts : [request.innerPointCount];
   const candidates = innerCounts.map((innerPointCount) => {
     const affordable = Math.floor(request.stepLimit / (request.dateCount * (innerPointCount + 1)));
-    const wanted = request.spendAll ? affordable : outerPathsFor(model, innerPointCount, request.wantedWidth);
+    const wanted = request.spendAll ? affordable : outerPathsFor(model, innerPointCount, request);
     const bounded = Math.min(largestOuterPathCount, Math.max(smallestOuterPathCount, Math.min(affordable, wanted)));
     const counts = { outerPathCount: request.outerPathCount ?? bounded, innerPointCount };
     const work = counts.outerPathCount * (innerPointCount + 1);
-    return { counts, width: expectedWidth(model, counts), work, isAffordable: affordable >= counts.outerPathCount };
+    return {
+      counts,
+      width: expectedWidth(model, counts, request.standardErrors),
+      work,
+      isAffordable: affordable >= counts.outerPathCount,
+    };
   });
   const affordable = candidates.filter(({ isAffordable }) => isAffordable);
   const open = affordable.length > 0 ? affordable : candidates.slice(0, 1);
@@ -130,9 +134,13 @@ export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
  * Outer paths that bring the noise down to what the gap leaves of the aim, but not below an eighth of the gap: near the
  * edge of what the gap allows, paths without end would gain next to nothing.
  */
-function outerPathsFor(model: PilotModel, innerPointCount: number, wantedWidth: number): number {
+function outerPathsFor(
+  model: PilotModel,
+  innerPointCount: number,
+  { wantedWidth, standardErrors }: PlanRequest,
+): number {
   const gap = expectedGap(model, innerPointCount);
-  const noise = standardErrorsIn95 * (model.lowerStandardDeviation + model.upperStandardDeviation);
+  const noise = standardErrors * (model.lowerStandardDeviation + model.upperStandardDeviation);
   if (noise === 0) return smallestOuterPathCount;
   const room = Math.max(aim * wantedWidth - gap, gap / 8);
   return Math.ceil((noise / room) * (noise / room));

@@ -3,6 +3,7 @@ import type { Progress } from '../run/options.js';
 
 const STAGE_WORDS: Readonly<Record<Progress['stage'], string>> = {
   fit: 'fitting the rule',
+  select: 'trying the basis',
   pilot: 'pilot',
   bounds: 'both bounds',
   nested: 'Andersen-Broadie bound',

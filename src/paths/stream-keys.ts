@@ -5,7 +5,17 @@ import type { StreamKey } from '../program/stream.js';
  * What a set of draws is for. Paths of one purpose never serve another: a rule valued on the paths that made it would
  * look better than it is.
  */
-export type Purpose = 'fit' | 'pilot' | 'pilot inner' | 'outer' | 'inner' | 'nested outer' | 'nested inner';
+export type Purpose = 'fit' | 'select' | 'select inner' | 'pilot' | 'pilot inner' | FinalPurpose;
+
+type FinalStage = 'outer' | 'inner' | 'nested outer' | 'nested inner';
+
+/** Draws that make a bracket; each round has its own. */
+export type FinalPurpose = FinalStage | `${FinalStage} ${number}`;
+
+/** The draws of a stage in a round, the first being round 1. */
+export function purposeInRound(stage: FinalStage, round: number): FinalPurpose {
+  return round === 1 ? stage : `${stage} ${round}`;
+}
 
 /**
  * The key of the stream for one purpose and one innovation.

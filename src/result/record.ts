@@ -22,6 +22,10 @@ export interface BoundEstimate extends Estimate {
  * The integer counts of a run, fixed before its final draws; replaying a plan with the same seed gives the same bits.
  */
 export interface Plan {
+  /** Which of the automatic basis' sizes the rule is fitted with, from 0 on; 0 for a stated basis. */
+  readonly basisSize: number;
+  /** Which round of final draws, from 1 on: each draws afresh. */
+  readonly round: number;
   readonly fitPathCount: number;
   /** Paths that carry both bounds; any count from 2 up, the last block may be short. */
   readonly outerPathCount: number;
@@ -61,6 +65,45 @@ export interface PilotFinding {
   readonly wantedWidth: number | null;
 }
 
+/** One size of the automatic basis that was fitted and tried. */
+export interface SizeTried {
+  readonly basisSize: number;
+  readonly columnCount: number;
+  readonly fitPathCount: number;
+  readonly lowerStandardDeviation: number;
+  readonly upperStandardDeviation: number;
+  /** Gap with the points of the trial, in money. */
+  readonly gap: number;
+  /** Width that the cheapest plan with it is expected to reach, in money. */
+  readonly expectedWidth: number;
+  /** Counted operations of the fit, and of the bounds in that plan. */
+  readonly fitOperations: number;
+  readonly boundsOperations: number;
+}
+
+/** How the size of the automatic basis was chosen, on paths of their own; null where there was no choice. */
+export interface SelectionFinding {
+  readonly outerPathCount: number;
+  readonly innerPointCount: number;
+  readonly tried: readonly SizeTried[];
+  readonly chosenSize: number;
+  /** Why no larger size was tried. */
+  readonly ended: 'width in reach' | 'no gain' | 'no larger size' | 'larger size too costly';
+}
+
+/** One round of final draws; each after the first is made because the one before missed the wanted width. */
+export interface RoundFinding {
+  readonly round: number;
+  readonly outerPathCount: number;
+  readonly innerPointCount: number;
+  /** Probability that its bracket misses, at most. */
+  readonly errorProbability: number;
+  /** Standard errors from each bound to its end of the bracket. */
+  readonly standardErrors: number;
+  readonly low: number;
+  readonly high: number;
+}
+
 /** The fitted rule at one date, as far as a reader needs it. */
 export interface DateFinding {
   readonly time: number;
@@ -87,7 +130,10 @@ export interface RunRecord {
   readonly seed: string;
   readonly decidedBy: CheckedModel['contract']['decidedBy'];
   readonly plan: Plan;
+  readonly selection: SelectionFinding | null;
   readonly pilot: PilotFinding | null;
+  /** The rounds of final draws; the bracket is that of the last. */
+  readonly rounds: readonly RoundFinding[];
   readonly paths: PathsFinding;
   readonly lower: BoundEstimate;
   readonly upper: BoundEstimate;
@@ -118,6 +164,7 @@ export interface RunRecord {
   readonly interpreter: 'wasm' | 'plain';
   readonly timing: {
     readonly totalSeconds: number;
+    /** All fits, and the trials that chose among them. */
     readonly fitSeconds: number;
     readonly pilotSeconds: number;
     readonly boundsSeconds: number;

@@ -16,12 +16,17 @@ export interface StageSums<S> {
 const fewestSteps = 32;
 const mostSteps = 512;
 
-/** Values the outer paths with both bounds. */
+/**
+ * Values the outer paths with both bounds.
+ *
+ * @param round of a bracket's draws, from 1 on; 1 for other purposes
+ */
 export async function runOuter(
   executor: Executor,
   programs: Programs,
   purpose: OuterPurpose,
   counts: { readonly outerPathCount: number; readonly innerPointCount: number },
+  round: number,
   signal: AbortSignal | undefined,
   onProgress: (progress: Progress) => void,
 ): Promise<StageSums<OuterSums>> {
@@ -30,12 +35,12 @@ export async function runOuter(
   const [fewest, most] = [fewestSteps, mostSteps].map((steps) => Math.max(1, Math.floor(steps / stepsOfBlock)));
   const jobs = cutIntoParcels(counts.outerPathCount, fewest!, most!).map((range) => ({
     kind: 'outer' as const,
-    work: { purpose, pathCount: counts.outerPathCount, innerPointCount: counts.innerPointCount },
+    work: { purpose, round, pathCount: counts.outerPathCount, innerPointCount: counts.innerPointCount },
     range,
   }));
-  const stage = purpose === 'pilot' ? 'pilot' : 'bounds';
+  const stage = purpose === 'outer' ? 'bounds' : purpose;
   const { results, isComplete } = await runParcels(executor, jobs, signal, (done) =>
-    onProgress({ stage, done, total: jobs.length }),
+    onProgress({ stage, done, total: jobs.length, round }),
   );
   return { sums: results.reduce(mergeOuterSums, noOuterSums(programs.times.length)), isComplete };
 }
@@ -44,16 +49,17 @@ export async function runOuter(
 export async function runNested(
   executor: Executor,
   counts: { readonly nestedOuterPathCount: number; readonly nestedInnerPathCount: number },
+  round: number,
   signal: AbortSignal | undefined,
   onProgress: (progress: Progress) => void,
 ): Promise<StageSums<NestedSums>> {
   const jobs = cutIntoParcels(counts.nestedOuterPathCount, 1).map((range) => ({
     kind: 'nested' as const,
-    work: { pathCount: counts.nestedOuterPathCount, innerPathCount: counts.nestedInnerPathCount },
+    work: { round, pathCount: counts.nestedOuterPathCount, innerPathCount: counts.nestedInnerPathCount },
     range,
   }));
   const { results, isComplete } = await runParcels(executor, jobs, signal, (done) =>
-    onProgress({ stage: 'nested', done, total: jobs.length }),
+    onProgress({ stage: 'nested', done, total: jobs.length, round }),
   );
   return { sums: results.reduce(mergeNestedSums, noNestedSums), isComplete };
 }

@@ -1,8 +1,5 @@
-import { countsBeforePilot } from './counts.js';
+import { openCandidates } from './candidates.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
-import { decideKeeping } from './fit-memory.js';
-import { forecastOf } from './forecast.js';
-import { judgeCounts } from './judge-counts.js';
 import { judgeOptions } from './judge-options.js';
 import type { CheckOptions, CheckOutcome } from './options.js';
 import { prepare } from './prepare.js';
@@ -14,12 +11,8 @@ export function checkScenario(source: string | object, options: CheckOptions, en
   const outcome = prepare(source, options);
   if (outcome.kind === 'refused') return outcome;
   const { scenario, programs } = outcome.prepared;
-  const counts = countsBeforePilot(programs, scenario.model.method);
-  const kept = decideKeeping(programs, counts.fitPathCount, options.fitMemoryBytes);
-  if (kept.kind === 'refused') return kept;
-  const workerCount = defaultWorkerCount(environment);
-  const forecast = forecastOf(programs, counts, kept.keeping, workerCount, environment.memoryBytes);
-  const messages = judgeCounts(programs, counts, forecast);
-  if (messages.length > 0) return { kind: 'refused', messages };
+  const opened = openCandidates(scenario.model, programs, options, environment, defaultWorkerCount(environment));
+  if (opened.kind === 'refused') return opened;
+  const { forecast } = opened.candidates.at(-1)!;
   return { kind: 'checked', scenario, forecast, advice: [] };
 }

@@ -43,6 +43,8 @@ export function judgePlan(plan: Plan): Message[] {
   }
   const isNested = upper === 'andersen-broadie';
   const least = [
+    ['basisSize', 0],
+    ['round', 1],
     ['fitPathCount', 1],
     ['outerPathCount', 2],
     ['innerPointCount', upper === 'one-step' ? 1 : 0],
@@ -55,6 +57,14 @@ export function judgePlan(plan: Plan): Message[] {
       const what = `The plan's ${name} is ${String(plan[name])}; it must be a whole number from ${fewest} up.`;
       return impossible(what, { name, fewest });
     });
+}
+
+/** The mistake of a plan whose size of the basis the scenario does not have. */
+export function judgeBasisSize({ basisSize }: Plan, { basisSizeCount }: Programs): Message[] {
+  if (basisSize < basisSizeCount) return [];
+  const sizes = basisSizeCount === 1 ? 'one size' : `${basisSizeCount} sizes`;
+  const what = `The plan's basisSize is ${basisSize}; the basis of this scenario has ${sizes}, counted from 0.`;
+  return [impossible(what, { basisSize, basisSizeCount })];
 }
 
 function impossible(what: string, evidence: Message['evidence']): Message {

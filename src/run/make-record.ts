@@ -1,5 +1,5 @@
 import { quantileSorted } from 'simple-statistics';
-import { asHeld, type Bound, boundOf, bracketOf } from '../bounds/bracket.js';
+import { asHeld, type Bound, boundOf, bracketOf, standardErrorsInRound } from '../bounds/bracket.js';
 import type { NestedSums } from '../bounds/nested-paths.js';
 import type { OuterSums } from '../bounds/outer-sums.js';
 import { estimateFrom, estimateOf, jointError } from '../numeric/estimate.js';
@@ -12,7 +12,9 @@ import type {
   PathsFinding,
   PilotFinding,
   Plan,
+  RoundFinding,
   RunRecord,
+  SelectionFinding,
 } from '../result/record.js';
 import type { StepFit } from '../rule/backward-induction.js';
 import type { Programs } from '../rule/programs.js';
@@ -26,7 +28,9 @@ export interface RunFindings {
   readonly scenario: CheckedScenario;
   readonly programs: Programs;
   readonly plan: Plan;
+  readonly selection: SelectionFinding | null;
   readonly pilot: PilotFinding | null;
+  readonly rounds: readonly RoundFinding[];
   readonly paths: PathsFinding;
   readonly fits: readonly StepFit[];
   readonly outer: OuterSums;
@@ -53,7 +57,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   ];
   const chosen = martingales.find(({ method }) => method === plan.upper) ?? martingales[0]!;
   const [lower, upper] = sign === 1 ? [ruled, chosen] : [chosen, ruled];
-  const bracket95 = bracketOf(lower, upper);
+  const bracket95 = bracketOf(lower, upper, standardErrorsInRound(plan.round));
   if (!Number.isFinite(bracket95.high - bracket95.low)) throw new Error('a bound is not a finite number');
   const dates = dateFindings(findings);
   const gap = gapOf(findings, chosen.method);
@@ -81,7 +85,9 @@ export function makeRecord(findings: RunFindings): RunRecord {
     seed: model.seed,
     decidedBy: model.contract.decidedBy,
     plan,
+    selection: findings.selection,
     pilot,
+    rounds: findings.rounds,
     paths: findings.paths,
     lower,
     upper,

@@ -10,10 +10,14 @@ export type InterpreterKind = (typeof interpreterKinds)[number];
 
 /** How far a run is. */
 export interface Progress {
-  readonly stage: 'fit' | 'pilot' | 'bounds' | 'nested';
+  readonly stage: 'fit' | 'select' | 'pilot' | 'bounds' | 'nested';
   /** Work done and in all, in the stage's own counts; `total` is fixed within a stage. */
   readonly done: number;
   readonly total: number;
+  /** Round of the bracket's draws, from 1 on. */
+  readonly round?: number;
+  /** Columns of the basis that is being fitted or tried. */
+  readonly columnCount?: number;
 }
 
 /** What changes a scenario from outside, as the command line does; each wins over the file. */

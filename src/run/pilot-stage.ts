@@ -1,21 +1,11 @@
-import {
-  chooseCounts,
-  defaultStepLimit,
-  expectedWidth,
-  modelOfPilot,
-  pilotInnerPointCount,
-  pilotOuterPathCount,
-} from '../bounds/plan.js';
 import type { PilotFinding, Plan } from '../result/record.js';
-import type { Programs } from '../rule/programs.js';
 import type { CheckedScenario } from '../scenario/model.js';
-import type { Executor } from '../workers/executor.js';
-import { runOuter } from './bounds-stage.js';
+import type { Candidate } from './candidates.js';
 import { countsBeforePilot } from './counts.js';
 import type { Environment } from './environment.js';
-import type { Progress, ValueOptions } from './options.js';
-import { Stopped } from './parcels.js';
-import { wantedWidthOf } from './wanted-width.js';
+import type { Fitted, StageOptions } from './fitted.js';
+import type { ValueOptions } from './options.js';
+import { runTrial } from './trial.js';
 
 /** A plan with what it was made from. */
 export interface Planned {
@@ -25,12 +15,17 @@ export interface Planned {
 }
 
 /** The plan when no pilot is needed: a replayed one, or counts that the scenario fixes. */
-export function fixedPlan({ model }: CheckedScenario, options: ValueOptions, programs: Programs): Planned | null {
-  if (options.plan !== undefined) return { plan: options.plan, pilot: null };
-  const counts = countsBeforePilot(programs, model.method);
+export function fixedPlan(
+  { model: { method } }: CheckedScenario,
+  { plan }: ValueOptions,
+  { programs, counts }: Candidate,
+): Planned | null {
+  if (plan !== undefined) return { plan, pilot: null };
   const { outerPathCount, innerPointCount } = counts;
   if (outerPathCount === null || innerPointCount === null) return null;
-  return { plan: { ...counts, outerPathCount, innerPointCount, upper: model.method.upper }, pilot: null };
+  const { upper } = method;
+  const { basisSize } = programs;
+  return { plan: { basisSize, round: 1, ...counts, outerPathCount, innerPointCount, upper }, pilot: null };
 }
 
 /**
@@ -38,49 +33,32 @@ export function fixedPlan({ model }: CheckedScenario, options: ValueOptions, pro
  * the counts that come out replay the run without a clock.
  */
 export async function choosePlan(
-  executor: Executor,
-  { model }: CheckedScenario,
-  programs: Programs,
-  options: ValueOptions & { readonly onProgress: (progress: Progress) => void },
+  fitted: Fitted,
+  { model: { method } }: CheckedScenario,
+  options: StageOptions,
   environment: Environment,
   started: number,
 ): Promise<Planned> {
-  const { method } = model;
-  const counts = {
-    outerPathCount: pilotOuterPathCount,
-    innerPointCount: Math.min(method.innerPointCount ?? pilotInnerPointCount, pilotInnerPointCount),
-  };
-  const before = environment.now();
-  const { sums, isComplete } = await runOuter(executor, programs, 'pilot', counts, options.signal, options.onProgress);
-  if (!isComplete) throw new Stopped();
-  const after = environment.now();
-
-  const dateCount = programs.times.length - 1;
-  const pilotSteps = counts.outerPathCount * dateCount * (counts.innerPointCount + 1);
-  const pilotModel = modelOfPilot(sums, counts.innerPointCount, method.upper);
-  const wantedWidth = wantedWidthOf(method, pilotModel.value);
-  const { budgetSeconds } = options;
-  const secondsLeft = budgetSeconds === undefined ? null : Math.max(0, budgetSeconds - (after - started) / 1000);
-  const affordable = secondsLeft === null ? null : (secondsLeft * pilotSteps * 1000) / Math.max(1, after - before);
-  const isNested = method.upper === 'andersen-broadie';
-  const share = affordable === null ? null : isNested ? affordable / 2 : affordable;
-  const chosen = chooseCounts(pilotModel, {
-    wantedWidth,
-    stepLimit: share ?? defaultStepLimit,
-    dateCount,
-    outerPathCount: method.outerPathCount,
-    innerPointCount: method.innerPointCount,
-    spendAll: budgetSeconds !== undefined,
-  });
+  const { programs } = fitted.candidate;
+  const trial = await runTrial(fitted, method, 'pilot', options, environment, started);
+  const { counts, sums, model, effort, chosen, wantedWidth, expectedWidth } = trial;
+  const { upper } = method;
+  const nestedSteps = effort.spendAll ? effort.stepLimit : undefined;
   return {
-    plan: { ...countsBeforePilot(programs, method, share ?? undefined), ...chosen, upper: method.upper },
+    plan: {
+      ...countsBeforePilot(programs, method, nestedSteps),
+      basisSize: programs.basisSize,
+      round: 1,
+      ...chosen,
+      upper,
+    },
     pilot: {
       ...counts,
-      lowerStandardDeviation: pilotModel.lowerStandardDeviation,
-      upperStandardDeviation: pilotModel.upperStandardDeviation,
-      gap: sums.gap.count === 0 || method.upper === 'regressed' ? sums.regressedGap.mean : sums.gap.mean,
-      expectedWidth: expectedWidth(pilotModel, chosen),
-      wantedWidth: budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
+      lowerStandardDeviation: model.lowerStandardDeviation,
+      upperStandardDeviation: model.upperStandardDeviation,
+      gap: sums.gap.count === 0 || upper === 'regressed' ? sums.regressedGap.mean : sums.gap.mean,
+      expectedWidth,
+      wantedWidth: options.budgetSeconds === undefined && method.outerPathCount === null ? wantedWidth : null,
     },
   };
 }

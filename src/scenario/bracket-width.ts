@@ -5,11 +5,11 @@ import { entriesOf, entryOf, type TreeNode, under } from './tree.js';
 
 type Width = Method['bracketWidth'];
 
-const defaultWidth: Width = { relative: 0.01 };
+const defaultWidth: Width = { relative: 0.002 };
 const amount = /^(\d+(?:\.\d*)?|\.\d+)(?:[eE]([-+]?\d+))?\s*(%?)$/;
 
 /**
- * Reads the width that the bracket should have: from outside if given there, else from the file, else the default of one percent.
+ * Reads the width that the bracket should have: from outside if given there, else from the file, else the default of a fifth of a percent.
  *
  * @fails adds `bad-override`, `mixed-forms`, `missing-key`, `value-out-of-range` and `width-and-counts`
  */

@@ -2,12 +2,16 @@ import { z } from 'zod';
 
 const MOST_PATHS = 1e10;
 const MOST_INNER = 1e6;
+const MOST_SIZES = 100;
+const MOST_ROUNDS = 100;
 
 const pathCount = z.int().min(1).max(MOST_PATHS);
 const method = z.enum(['rule', 'one-step', 'andersen-broadie', 'regressed', 'two-level']);
 
 /** The counts of a plan: positive, save that a nested bound may be left out, and small enough to be meant. */
 export const planShape = z.object({
+  basisSize: z.int().min(0).max(MOST_SIZES),
+  round: z.int().min(1).max(MOST_ROUNDS),
   fitPathCount: pathCount,
   outerPathCount: pathCount,
   innerPointCount: z.int().min(0).max(MOST_INNER),

@@ -1,0 +1,129 @@
+import { aim } from '../bounds/plan.js';
+import type { SelectionFinding, SizeTried } from '../result/record.js';
+import { stepOperations } from '../rule/operations.js';
+import type { Method } from '../scenario/model.js';
+import type { Candidate } from './candidates.js';
+import type { FitBench, Fitted } from './fitted.js';
+import { runTrial, type Trial } from './trial.js';
+
+/** The rule that a run goes on with, and how it was chosen; no finding where there was no choice. */
+export interface Selected {
+  readonly fitted: Fitted;
+  readonly selection: SelectionFinding | null;
+}
+
+/** A larger size must bring the expected width below this share of the smaller one's, or none larger is tried. */
+const gainShare = 0.9;
+/** Bounds that cost more than so many times the next fit are worth trying it for. */
+const boundsPerFit = 1;
+/** Share of a budget's rest that the next fit may take. */
+const budgetShare = 0.4;
+
+/**
+ * Chooses the size of the automatic basis: fits and tries sizes from small to large until one reaches the wanted width
+ * for less than the next fit would cost, or brings nothing.
+ *
+ * The trial is drawn on the select stream, which serves nothing else: the chosen rule's bracket is drawn afresh, so that
+ * choosing cannot flatter it. What decides are counted operations and sampled variances; only a time budget looks at
+ * the clock, and the plan that results replays without one.
+ */
+export async function selectFit(
+  bench: FitBench,
+  candidates: readonly Candidate[],
+  method: Method,
+  started: number,
+): Promise<Selected> {
+  const [first, ...larger] = candidates;
+  let best = await bench.fit(first!);
+  if (larger.length === 0) return { fitted: best, selection: null };
+  const trials: { size: SizeTried; trial: Trial }[] = [];
+  const tryOut = async (fitted: Fitted) => {
+    const trial = await runTrial(fitted, method, 'select', bench.options, bench.environment, started);
+    const size = describe(fitted.candidate, trial);
+    trials.push({ size, trial });
+    return { size, trial };
+  };
+  let bestTrial = await tryOut(best);
+  let ended: SelectionFinding['ended'] = 'no larger size';
+  for (const candidate of larger) {
+    const verdict = worthTrying(bench, candidate, best.candidate, bestTrial, started);
+    if (verdict !== null) {
+      ended = verdict;
+      break;
+    }
+    const fitted = await bench.fit(candidate);
+    const trial = await tryOut(fitted);
+    const isBetter = betterThan(trial, bestTrial);
+    const gains = trial.size.expectedWidth < gainShare * bestTrial.size.expectedWidth;
+    if (isBetter) {
+      await bench.dismiss(best);
+      [best, bestTrial] = [fitted, trial];
+    } else await bench.dismiss(fitted);
+    if (!gains && !reaches(bestTrial)) {
+      ended = 'no gain';
+      break;
+    }
+  }
+  const { counts } = bestTrial.trial;
+  return {
+    fitted: best,
+    selection: {
+      ...counts,
+      tried: trials.map(({ size }) => size),
+      chosenSize: best.candidate.programs.basisSize,
+      ended,
+    },
+  };
+}
+
+interface Tried {
+  readonly size: SizeTried;
+  readonly trial: Trial;
+}
+
+/** Why the next size is not worth a fit; null if it is. */
+function worthTrying(
+  { environment, options }: FitBench,
+  next: Candidate,
+  current: Candidate,
+  tried: Tried,
+  started: number,
+): SelectionFinding['ended'] | null {
+  if (options.budgetSeconds !== undefined) {
+    const elapsed = (environment.now() - started) / 1000;
+    const pace = elapsed / current.operations;
+    const isAffordable = next.operations * pace <= budgetShare * (options.budgetSeconds - elapsed);
+    return isAffordable ? null : 'larger size too costly';
+  }
+  const isEnough = reaches(tried) && tried.size.boundsOperations <= boundsPerFit * next.operations;
+  return isEnough ? 'width in reach' : null;
+}
+
+/** Reaching the width counts first, then the cost of it; out of reach, the narrower is better. */
+function betterThan(a: Tried, b: Tried): boolean {
+  if (reaches(a) !== reaches(b)) return reaches(a);
+  if (reaches(a)) return a.size.boundsOperations < b.size.boundsOperations;
+  return a.size.expectedWidth < b.size.expectedWidth;
+}
+
+function reaches({ size, trial: { effort, wantedWidth } }: Tried): boolean {
+  return !effort.spendAll && size.expectedWidth <= aim * wantedWidth * (1 + 1e-6);
+}
+
+function describe(
+  { programs, counts, operations }: Candidate,
+  { model, sums, chosen, expectedWidth }: Trial,
+): SizeTried {
+  const steps = chosen.outerPathCount * (programs.times.length - 1) * (chosen.innerPointCount + 1);
+  return {
+    basisSize: programs.basisSize,
+    columnCount: programs.columns.length,
+    fitPathCount: counts.fitPathCount,
+    lowerStandardDeviation: model.lowerStandardDeviation,
+    upperStandardDeviation: model.upperStandardDeviation,
+    gap: sums.gap.count === 0 ? sums.regressedGap.mean : sums.gap.mean,
+    expectedWidth,
+    fitOperations: operations,
+    boundsOperations: steps * stepOperations(programs),
+  };
+}
