@@ -3,8 +3,8 @@ import { generatingVector } from './lattice-tables.js';
 /**
  * Dimensions of the largest lattice: with more innovations than the generating vector has numbers, points are plain draws.
  *
- * All of the innovations or none: with a hundred drivers, lattices in the first forty and plain draws in the others left
- * two thirds of the variance that lattices in all took away (measured, see DEVELOPERS.md).
+ * All of the innovations or none: with a hundred drivers, lattices in the first forty and plain draws in the others took away
+ * a third to a half of the variance that lattices in all did (measured, see DEVELOPERS.md).
  */
 export const largestLatticeDimensionCount = generatingVector.length;
 
