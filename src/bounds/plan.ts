@@ -3,8 +3,6 @@ import { varianceOf } from '../numeric/moments.js';
 import type { UpperMethod } from '../scenario/model.js';
 import type { OuterSums } from './outer-sums.js';
 
-/** Counts of the pilot: enough for spreads to about 3%. */
-export const pilotOuterPathCount = 1024;
 /** Inner points of the pilot; the first half of them is looked at apart. */
 export const pilotInnerPointCount = 32;
 
@@ -131,7 +129,7 @@ export function chooseCounts(model: PilotModel, request: PlanRequest): Counts {
 }
 
 /**
- * Outer paths that bring the noise down to what the gap leaves of the aim, but not below an eighth of the gap: near the
+ * Outer paths that bring the noise down to what the gap leaves of the aim, but not below a quarter of the gap: near the
  * edge of what the gap allows, paths without end would gain next to nothing.
  */
 function outerPathsFor(
@@ -142,7 +140,7 @@ function outerPathsFor(
   const gap = expectedGap(model, innerPointCount);
   const noise = standardErrors * (model.lowerStandardDeviation + model.upperStandardDeviation);
   if (noise === 0) return smallestOuterPathCount;
-  const room = Math.max(aim * wantedWidth - gap, gap / 8);
+  const room = Math.max(aim * wantedWidth - gap, gap / 4);
   return Math.ceil((noise / room) * (noise / room));
 }
 

@@ -10,43 +10,71 @@ export interface BasisSize {
   readonly pathsPerColumn: number;
 }
 
-interface SizesForCount {
-  readonly degrees: readonly number[];
-  readonly integrandDegrees: readonly number[];
-  readonly pairCounts: readonly number[];
-}
+/** Degree, degree of the integrands, pairs of points, paths for each column. */
+type Row = readonly [degree: number, integrandDegree: number, pairCount: number, pathsPerColumn: number];
 
 /**
  * Sizes by the count of leading variables, from small to large, none much beyond 250 columns: what the regression
- * package solves in a fraction of a second. Chosen by measurement, see DEVELOPERS.md.
+ * package solves in a fraction of a second. Few variables want more paths for each column: their bias is small, so that
+ * noise would rule. Chosen by measurement, see DEVELOPERS.md.
  */
-const sizes: readonly SizesForCount[] = [
-  { degrees: [0], integrandDegrees: [0], pairCounts: [8] },
-  { degrees: [12, 16, 20], integrandDegrees: [12, 12, 12], pairCounts: [8, 8, 16] },
-  { degrees: [5, 6, 9], integrandDegrees: [4, 6, 6], pairCounts: [4, 8, 16] },
-  { degrees: [4, 5, 6, 8], integrandDegrees: [3, 3, 4, 4], pairCounts: [4, 4, 8, 8] },
-  { degrees: [3, 4, 5, 6], integrandDegrees: [2, 2, 3, 3], pairCounts: [4, 4, 4, 4] },
-  { degrees: [2, 3, 4, 5], integrandDegrees: [2, 2, 2, 2], pairCounts: [4, 4, 4, 4] },
-  { degrees: [2, 3, 4], integrandDegrees: [2, 2, 2], pairCounts: [4, 4, 4] },
-  { degrees: [2, 3], integrandDegrees: [1, 1], pairCounts: [4, 4] },
-  { degrees: [2, 3], integrandDegrees: [1, 1], pairCounts: [4, 4] },
+const sizesByCount: readonly (readonly Row[])[] = [
+  [[0, 0, 8, 1000]],
+  [
+    [12, 12, 8, 2000],
+    [16, 12, 8, 3000],
+    [20, 12, 16, 5000],
+  ],
+  [
+    [4, 3, 4, 1500],
+    [6, 4, 8, 2500],
+    [9, 6, 16, 4500],
+  ],
+  [
+    [4, 3, 4, 1000],
+    [5, 3, 4, 1500],
+    [6, 4, 8, 2500],
+    [8, 4, 8, 1500],
+  ],
+  [
+    [3, 2, 4, 1000],
+    [4, 2, 4, 1000],
+    [5, 3, 4, 1500],
+    [6, 3, 4, 1200],
+  ],
+  [
+    [2, 2, 4, 1400],
+    [3, 2, 4, 1000],
+    [4, 2, 4, 1000],
+    [5, 2, 4, 1000],
+  ],
+  [
+    [2, 2, 4, 1000],
+    [3, 2, 4, 1000],
+    [4, 2, 4, 1200],
+  ],
+  [
+    [2, 1, 4, 1000],
+    [3, 1, 4, 1000],
+  ],
+  [
+    [2, 1, 4, 1000],
+    [3, 1, 4, 1000],
+  ],
 ];
 
 /** Sizes for more leading variables than the list has: alone, then in pairs while those are few enough. */
-const aloneThenPairs: SizesForCount = { degrees: [0, 2], integrandDegrees: [0, 1], pairCounts: [4, 4] };
-const alone: SizesForCount = { degrees: [0], integrandDegrees: [0], pairCounts: [4] };
+const alone: Row = [0, 0, 4, 1000];
+const inPairs: Row = [2, 1, 4, 1000];
 const mostVariablesInPairs = 20;
-
-/** More paths for each column of the larger sizes: their bias is smaller, so that noise would rule. */
-const pathsPerColumn = [800, 1000, 1500, 2000];
 
 /** The sizes there are for a count of leading variables, from small to large. */
 export function basisSizes(leadingCount: number): readonly BasisSize[] {
-  const found = sizes[leadingCount] ?? (leadingCount <= mostVariablesInPairs ? aloneThenPairs : alone);
-  return found.degrees.map((degree, size) => ({
+  const rows = sizesByCount[leadingCount] ?? (leadingCount <= mostVariablesInPairs ? [alone, inPairs] : [alone]);
+  return rows.map(([degree, integrandDegree, pairCount, pathsPerColumn]) => ({
     degree,
-    integrandDegree: found.integrandDegrees[size]!,
-    pairCount: found.pairCounts[size]!,
-    pathsPerColumn: pathsPerColumn[size]!,
+    integrandDegree,
+    pairCount,
+    pathsPerColumn,
   }));
 }

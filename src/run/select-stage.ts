@@ -12,8 +12,10 @@ export interface Selected {
   readonly selection: SelectionFinding | null;
 }
 
-/** A larger size must bring the expected width below this share of the smaller one's, or none larger is tried. */
+/** A larger size gains if it brings the expected width below this share of the best so far. */
 const gainShare = 0.9;
+/** Sizes in a row that gain nothing, after which none larger is tried: a trial errs, and some size fits badly. */
+const mostWithoutGain = 2;
 /** Bounds that cost more than so many times the next fit are worth trying it for. */
 const boundsPerFit = 1;
 /** Share of a budget's rest that the next fit may take. */
@@ -45,6 +47,7 @@ export async function selectFit(
   };
   let bestTrial = await tryOut(best);
   let ended: SelectionFinding['ended'] = 'no larger size';
+  let withoutGain = 0;
   for (const candidate of larger) {
     const verdict = worthTrying(bench, candidate, best.candidate, bestTrial, started);
     if (verdict !== null) {
@@ -59,7 +62,8 @@ export async function selectFit(
       await bench.dismiss(best);
       [best, bestTrial] = [fitted, trial];
     } else await bench.dismiss(fitted);
-    if (!gains && !reaches(bestTrial)) {
+    withoutGain = gains ? 0 : withoutGain + 1;
+    if (withoutGain >= mostWithoutGain) {
       ended = 'no gain';
       break;
     }

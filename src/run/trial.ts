@@ -7,11 +7,13 @@ import {
   modelOfPilot,
   type PilotModel,
   pilotInnerPointCount,
-  pilotOuterPathCount,
 } from '../bounds/plan.js';
 import { standardErrorsIn95 } from '../numeric/estimate.js';
+import { blockLanes } from '../program/program.js';
+import { stepOperations } from '../rule/operations.js';
 import type { Method } from '../scenario/model.js';
 import { runOuter } from './bounds-stage.js';
+import type { Candidate } from './candidates.js';
 import { type Effort, effortOf } from './effort.js';
 import type { Environment } from './environment.js';
 import type { Fitted, StageOptions } from './fitted.js';
@@ -29,6 +31,18 @@ export interface Trial {
   readonly expectedWidth: number;
 }
 
+/** Share of a fit's operations that a trial of it may take, within these counts of paths. */
+const trialShare = 0.2;
+const fewestTrialPaths = 1024;
+const mostTrialPaths = 8192;
+
+/** More paths than spreads alone would ask for: it is the small gap that they must tell from nothing. */
+function trialPathCount({ programs, operations }: Candidate, innerPointCount: number): number {
+  const operationsOfPath = (programs.times.length - 1) * (innerPointCount + 1) * stepOperations(programs);
+  const affordable = Math.floor((trialShare * operations) / operationsOfPath / blockLanes) * blockLanes;
+  return Math.min(mostTrialPaths, Math.max(fewestTrialPaths, affordable));
+}
+
 /**
  * Draws a small set of outer paths on a stream of its own and reads the cheapest counts for the wanted width off it.
  *
@@ -38,17 +52,16 @@ export interface Trial {
  * @fails throws Stopped, and NotFinite from the paths
  */
 export async function runTrial(
-  { candidate: { programs }, executor }: Fitted,
+  { candidate, executor }: Fitted,
   method: Method,
   purpose: Exclude<OuterPurpose, 'outer'>,
   options: StageOptions,
   environment: Environment,
   started: number,
 ): Promise<Trial> {
-  const counts = {
-    outerPathCount: pilotOuterPathCount,
-    innerPointCount: Math.min(method.innerPointCount ?? pilotInnerPointCount, pilotInnerPointCount),
-  };
+  const { programs } = candidate;
+  const innerPointCount = Math.min(method.innerPointCount ?? pilotInnerPointCount, pilotInnerPointCount);
+  const counts = { outerPathCount: trialPathCount(candidate, innerPointCount), innerPointCount };
   const before = environment.now();
   const onProgress: StageOptions['onProgress'] = (progress) =>
     options.onProgress({ ...progress, columnCount: programs.columns.length });
