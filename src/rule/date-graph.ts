@@ -15,7 +15,15 @@ import type { DriverLayout } from './layout.js';
  * Uniform inputs of the programs that look at one date, by position; mean and inverse spread of each variable follow
  * from `firstStandard` on.
  */
-export const dateUniforms = { clock: 0, discountFactor: 1, untilNext: 2, untilLast: 3, firstStandard: 4 } as const;
+export const dateUniforms = {
+  clock: 0,
+  discountFactor: 1,
+  untilNext: 2,
+  untilLast: 3,
+  /** 1 where somebody may decide, 0 today if nobody may. */
+  isDecisionDate: 4,
+  firstStandard: 5,
+} as const;
 
 /** Everything about one date as a function of the drivers in `next`: amounts, basis, variables before standardising. */
 export interface DateGraph {
@@ -41,9 +49,9 @@ export function writeDateGraph(
   const clock = graph.uniform(dateUniforms.clock);
   const factor = graph.uniform(dateUniforms.discountFactor);
   const meanings = meaningsOfState(model, graph, drivers, states, clock);
-  const amounts = writeAmounts(graph, model.contract, meanings, factor);
+  const amounts = writeAmounts(graph, model.contract, meanings, factor, graph.uniform(dateUniforms.isDecisionDate));
   if (model.method.basis !== 'auto') {
-    const basis = statedBasis(model.method.basis, graph, meanings);
+    const basis = unlessEnded(graph, statedBasis(model.method.basis, graph, meanings), amounts);
     return { graph, amounts, basis, variables: [], uniformCount: dateUniforms.firstStandard };
   }
   const variables = writeVariables(graph, drivers, groups, states);
@@ -66,8 +74,19 @@ export function writeDateGraph(
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
     payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });
   }
-  const basis = automaticBasis(graph, standardised, payoffs);
+  const basis = unlessEnded(graph, automaticBasis(graph, standardised, payoffs), amounts);
   return { graph, amounts, basis, variables, uniformCount: dateUniforms.firstStandard + 2 * variables.length };
+}
+
+/**
+ * Makes every column 0 where the ending event holds, the constant too: such a state has no continuation, and so adds
+ * nothing to the regression and takes nothing from it.
+ */
+function unlessEnded(graph: Graph, basis: Basis, { ended }: Amounts): Basis {
+  if (ended === null) return basis;
+  const zero = graph.constant(0);
+  const columns = basis.columns.map((column) => ({ ...column, node: graph.apply('select', ended, zero, column.node) }));
+  return { ...basis, columns };
 }
 
 /**
