@@ -5,6 +5,7 @@ import { Graph, type Node } from '../program/graph.js';
 import { lower } from '../program/lower.js';
 import { automaticBasis } from '../regression/automatic-basis.js';
 import type { Basis, Column } from '../regression/basis.js';
+import { writeEndingColumns } from '../regression/ending-columns.js';
 import { largestDriverCount, writeExpectedPayoff } from '../regression/expected-payoff.js';
 import { statedBasis } from '../regression/stated-basis.js';
 import { type DriverGroup, type Variable, writeVariables } from '../regression/variables.js';
@@ -73,6 +74,10 @@ export function writeDateGraph(
     };
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
     payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });
+    const untilNext = graph.uniform(dateUniforms.untilNext);
+    const untilLast = graph.uniform(dateUniforms.untilLast);
+    const times = { clock, untilNext, untilLast };
+    payoffs.push(...writeEndingColumns(model, graph, drivers, states, amounts.payoff, times));
   }
   const basis = unlessEnded(graph, automaticBasis(graph, standardised, payoffs), amounts);
   return { graph, amounts, basis, variables, uniformCount: dateUniforms.firstStandard + 2 * variables.length };

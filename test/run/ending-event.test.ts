@@ -46,6 +46,10 @@ test('an event that never holds leaves the value, the rule and both bounds as th
     expect(idle[part]).toEqual(free[part]);
   expect(free.endedByEventShare).toBeNull();
   expect(idle.endedByEventShare).toBe(0);
+  const withColumns = await recordOf(lots({ clause: clauseOf('largest(lot) >= 1e9') }));
+  expect(withColumns.basis.columns.length).toBeGreaterThan(
+    (await recordOf(lots({ clause: null }))).basis.columns.length,
+  );
 });
 
 test.each([
