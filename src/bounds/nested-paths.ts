@@ -39,6 +39,8 @@ export function mergeNestedSums(a: NestedSums, b: NestedSums): NestedSums {
  * martingale stopped at exercise as control. Q's noise has mean 0 given the path and sits inside a maximum, so the
  * mean is biased high, never low, by an amount that falls with the inner paths.
  *
+ * Inner paths stop where the ending event holds, with what it pays; so do the maxima of the outer ones.
+ *
  * It rests on the rule and not on the fitted value, and runs on outer paths of its own: an independent witness beside
  * the one-step bound.
  *
@@ -74,11 +76,13 @@ function runBlock(block: Block, nested: NestedPrograms, rule: Rule, work: Nested
 
   block.column(columns.martingale).fill(0);
   block.column(columns.upper).fill(Number.NEGATIVE_INFINITY);
+  block.column(columns.alive).fill(1);
   block.restart();
   for (let date = 0; date <= last; date++) {
     const isDecisionDate = date > 0 || todayIsDecisionDate;
     block.evaluate(date, rule, firstPath);
     interpreter.copy(date === last ? layout.terminal : layout.payoff, columns.amount, 1);
+    if (layout.ended !== null) interpreter.copy(layout.ended, columns.ended, 1);
     interpreter.copy(layout.next, columns.drivers, driverCount);
     if (date === last) {
       block.column(columns.exercises).fill(1);
@@ -93,6 +97,7 @@ function runBlock(block: Block, nested: NestedPrograms, rule: Rule, work: Nested
     if (date === 0) today = interpreter.moments(columns.continuation, lanes);
     else block.run(nested.move);
     if (isDecisionDate) block.run(nested.note);
+    if (layout.ended !== null) block.run(nested.end);
     interpreter.copy(columns.continuation, columns.continuationBefore, 1);
     if (date < last) {
       interpreter.copy(columns.drivers, layout.state, driverCount);

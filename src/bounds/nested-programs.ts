@@ -1,5 +1,5 @@
 import { compile } from '../program/compile.js';
-import { Graph } from '../program/graph.js';
+import { Graph, type Node } from '../program/graph.js';
 import type { Program } from '../program/program.js';
 import { singleStageColumnCount } from '../rule/layout.js';
 import type { Programs } from '../rule/programs.js';
@@ -15,6 +15,9 @@ export interface NestedColumns {
   /** Worth of continuing with the rule: at the date before, and at the date in work (before: its sum over inner paths). */
   readonly continuationBefore: number;
   readonly continuation: number;
+  /** 1 where the ending event holds at the date in work, and 1 until it has held. */
+  readonly ended: number;
+  readonly alive: number;
   /** 1 while the inner path runs, and its regressed martingale so far. */
   readonly running: number;
   readonly increments: number;
@@ -25,9 +28,9 @@ export interface NestedColumns {
 /** What nested paths do, lane by lane. */
 export interface NestedPrograms {
   readonly columns: NestedColumns;
-  /** 1 to `exercises` where the payoff beats holding. */
+  /** 1 to `exercises` where the payoff beats holding, or the contract ends. */
   readonly decide: Program;
-  /** Adds what the running inner paths that the rule exercises bring, and ends them; on the last date, all of them. */
+  /** Adds what the running inner paths bring that the rule exercises or the event ends, and stops them; on the last date, all of them. */
   readonly endInner: Program;
   readonly endInnerLast: Program;
   /** Turns the sum over inner paths into their mean; uniform: 1 / inner paths. */
@@ -36,11 +39,19 @@ export interface NestedPrograms {
   readonly move: Program;
   /** Lets hindsight note what the date would have brought. */
   readonly note: Program;
+  /** Ends the paths on which the event holds; for a contract that has one. */
+  readonly end: Program;
 }
 
 /** Writes the programs of the nested paths for a model. */
 export function buildNestedPrograms({ layout }: Programs): NestedPrograms {
   const { stage, payoff, terminal, hold, scratch } = layout;
+  const hasEvent = layout.ended !== null;
+  /** Whether a path stops at a date that is not the last: the rule exercises, or the event ends the contract. */
+  const stops = (graph: Graph, amount: number): Node => {
+    const exercises = graph.apply('less', graph.column(hold), graph.column(amount));
+    return layout.ended === null ? exercises : graph.apply('maximum', exercises, graph.column(layout.ended));
+  };
   const columns: NestedColumns = {
     martingale: stage,
     upper: stage + 1,
@@ -50,13 +61,15 @@ export function buildNestedPrograms({ layout }: Programs): NestedPrograms {
     continuation: stage + 5,
     running: stage + 6,
     increments: stage + 7,
+    ended: stage + 8,
+    alive: stage + 9,
     drivers: stage + singleStageColumnCount,
   };
   const endInner = (isLast: boolean): Program => {
     const graph = new Graph();
     const running = graph.column(columns.running);
     const brings = graph.column(isLast ? terminal : payoff);
-    const ends = isLast ? running : graph.multiply(running, graph.apply('less', graph.column(hold), brings));
+    const ends = isLast ? running : graph.multiply(running, stops(graph, payoff));
     const net = graph.subtract(brings, graph.column(columns.increments));
     const added = graph.apply('select', ends, net, graph.constant(0));
     return compile(
@@ -72,9 +85,7 @@ export function buildNestedPrograms({ layout }: Programs): NestedPrograms {
   };
   return {
     columns,
-    decide: write(scratch, columns.exercises, (graph) =>
-      graph.apply('less', graph.column(hold), graph.column(columns.amount)),
-    ),
+    decide: write(scratch, columns.exercises, (graph) => stops(graph, columns.amount)),
     endInner: endInner(false),
     endInnerLast: endInner(true),
     average: write(scratch, columns.continuation, (graph) =>
@@ -89,16 +100,22 @@ export function buildNestedPrograms({ layout }: Programs): NestedPrograms {
       );
     }),
     note: write(scratch, columns.upper, (graph) => {
+      const upper = graph.column(columns.upper);
       const net = graph.subtract(graph.column(columns.amount), graph.column(columns.martingale));
-      return graph.apply('maximum', graph.column(columns.upper), net);
+      const larger = graph.apply('maximum', upper, net);
+      return hasEvent ? graph.apply('select', graph.column(columns.alive), larger, upper) : larger;
+    }),
+    end: write(scratch, columns.alive, (graph) => {
+      const goesOn = graph.subtract(graph.constant(1), graph.column(columns.ended));
+      return graph.multiply(graph.column(columns.alive), goesOn);
     }),
   };
 }
 
 /** All programs, for the block that is to run them. */
 export function nestedProgramList(nested: NestedPrograms): Program[] {
-  const { decide, endInner, endInnerLast, average, move, note } = nested;
-  return [decide, endInner, endInnerLast, average, move, note];
+  const { decide, endInner, endInnerLast, average, move, note, end } = nested;
+  return [decide, endInner, endInnerLast, average, move, note, end];
 }
 
 function write(scratch: number, column: number, node: (graph: Graph) => number): Program {

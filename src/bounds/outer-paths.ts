@@ -30,6 +30,9 @@ export interface OuterWork {
  *   path given the state, so its mean is the value of the rule: biased low for the best value by what the rule misses, only.
  * - upper: mean of the largest payoff less martingale. Noise inside a maximum can only raise its mean: biased high.
  *
+ * Where the ending event holds, what it pays is the path's last amount: a running path takes it, the maxima take it in,
+ * and nothing later counts.
+ *
  * Without inner points the regressed martingale, exact whatever its coefficients, serves both.
  *
  * @source Haugh & Kogan (2004), Operations Research 52, 258-270; Rogers (2002), Mathematical Finance 12, 271-286
@@ -57,15 +60,17 @@ function runBlock(
   index: number,
   firstPath: number,
 ): OuterSums {
-  const { times, todayIsDecisionDate } = block.programs;
+  const { times, todayIsDecisionDate, layout } = block.programs;
   const { innerPointCount } = work;
   const purposes = purposesOf(work);
   const kind: OuterKind = innerPointCount > 0 ? 'one-step' : 'regressed';
   const last = times.length - 1;
   const exerciseCounts = times.map(() => 0);
+  const endedCounts = times.map(() => 0);
   const chooseAt = (date: number) => {
     block.run(date === last ? outer.chooseLast[kind] : outer.choose[kind]);
     exerciseCounts[date] = block.interpreter.sum(outer.columns.exercised, block.lanes);
+    if (layout.ended !== null) endedCounts[date] = block.interpreter.sum(outer.columns.ended, block.lanes);
   };
 
   openPaths(block, outer);
@@ -89,7 +94,7 @@ function runBlock(
     block.run(outer.move[kind]);
     chooseAt(arrives);
   }
-  return sumPaths(block, outer, kind, exerciseCounts);
+  return { ...sumPaths(block, outer, kind), exerciseCounts, endedCounts };
 }
 
 function purposesOf({ purpose, round }: OuterWork): { outer: Purpose; inner: Purpose } {
@@ -99,13 +104,18 @@ function purposesOf({ purpose, round }: OuterWork): { outer: Purpose; inner: Pur
 
 /** Puts the lanes of a block at the start: nothing taken off, nothing brought, all running. */
 function openPaths(block: Block, { columns }: OuterPrograms): void {
-  const { regressed, martingale, halfMartingale, lower, plain, upper, halfUpper, regressedUpper, running } = columns;
+  const { regressed, martingale, halfMartingale, lower, plain } = columns;
+  const { upper, halfUpper, regressedUpper, running, alive } = columns;
   for (const column of [regressed, martingale, halfMartingale, lower, plain]) block.column(column).fill(0);
   for (const column of [upper, halfUpper, regressedUpper]) block.column(column).fill(Number.NEGATIVE_INFINITY);
-  block.column(running).fill(1);
+  for (const column of [running, alive]) block.column(column).fill(1);
 }
 
-function sumPaths(block: Block, outer: OuterPrograms, kind: OuterKind, exerciseCounts: number[]): OuterSums {
+function sumPaths(
+  block: Block,
+  outer: OuterPrograms,
+  kind: OuterKind,
+): Omit<OuterSums, 'exerciseCounts' | 'endedCounts'> {
   const { interpreter, lanes } = block;
   const { columns, gaps } = outer;
   const moments = (column: number) => interpreter.moments(column, lanes);
@@ -122,7 +132,6 @@ function sumPaths(block: Block, outer: OuterPrograms, kind: OuterKind, exerciseC
     ...bounds,
     regressedGap: moments(columns.regressedUpper),
     gap: oneStep(columns.upper),
-    exerciseCounts,
     neverCount: interpreter.sum(columns.unused, lanes),
   };
 }

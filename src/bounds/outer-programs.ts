@@ -1,8 +1,9 @@
 import { compile, type Output } from '../program/compile.js';
-import { Graph, type Node } from '../program/graph.js';
+import { Graph } from '../program/graph.js';
 import type { Program } from '../program/program.js';
 import { singleStageColumnCount } from '../rule/layout.js';
 import type { Programs } from '../rule/programs.js';
+import { buildChoose } from './outer-choice.js';
 
 /** Columns of the stages in which outer paths keep what they carry along. */
 export interface OuterColumns {
@@ -24,11 +25,14 @@ export interface OuterColumns {
   readonly upper: number;
   readonly halfUpper: number;
   readonly regressedUpper: number;
-  /** 1 while the rule has not exercised. */
+  /** 1 while the rule has not exercised and the contract has not ended. */
   readonly running: number;
   /** 1 where the rule exercises at the date in work, and where it ends without having used the right. */
   readonly exercised: number;
   readonly unused: number;
+  /** 1 until the ending event has held, and where it ends a running path at the date in work. */
+  readonly alive: number;
+  readonly ended: number;
 }
 
 /** Which martingale is taken off: the one-step one needs inner points. */
@@ -69,6 +73,8 @@ export function buildOuterPrograms(programs: Programs): OuterPrograms {
     running: stage + 11,
     exercised: stage + 12,
     unused: stage + 13,
+    alive: stage + 14,
+    ended: stage + 15,
     shifts: stage + singleStageColumnCount,
   };
   return {
@@ -120,44 +126,6 @@ function buildMove({ layout }: Programs, columns: OuterColumns, kind: OuterKind)
     moved(columns.halfMartingale, columns.innerHalfSum, moveUniforms.inverseHalfPoints);
   }
   return compile(graph, outputs, moveUniforms.count, layout.scratch, 'move of martingales');
-}
-
-/**
- * What happens at a date on a path: hindsight's maxima take the amount in, and a running path on which the rule
- * exercises takes it as its result. On the last date every running path ends; it ends unused if doing nothing, or the
- * floor, is what it takes.
- */
-function buildChoose({ layout, floor }: Programs, columns: OuterColumns, kind: OuterKind, isLast: boolean): Program {
-  const graph = new Graph();
-  const column = (index: number) => graph.column(index);
-  const outputs: Output[] = [];
-  const amount = column(isLast ? layout.terminal : layout.payoff);
-  const note = (upper: number, martingale: number): Node => {
-    const net = graph.subtract(amount, column(martingale));
-    outputs.push({ node: graph.apply('maximum', column(upper), net), column: upper });
-    return net;
-  };
-  const regressedNet = note(columns.regressedUpper, columns.regressed);
-  let net = regressedNet;
-  if (kind === 'one-step') {
-    net = note(columns.upper, columns.martingale);
-    note(columns.halfUpper, columns.halfMartingale);
-  }
-  const running = column(columns.running);
-  const exercises = isLast ? running : graph.multiply(running, graph.apply('less', column(layout.hold), amount));
-  outputs.push({ node: graph.apply('select', exercises, net, column(columns.lower)), column: columns.lower });
-  outputs.push({ node: graph.apply('select', exercises, amount, column(columns.plain)), column: columns.plain });
-  if (isLast) {
-    const isIdle = graph.apply('less', column(layout.payoff), amount);
-    const isWorthless = floor === null ? graph.constant(0) : graph.apply('lessOrEqual', amount, graph.constant(floor));
-    const unused = graph.multiply(running, graph.apply('maximum', isIdle, isWorthless));
-    outputs.push({ node: unused, column: columns.unused });
-    outputs.push({ node: graph.subtract(running, unused), column: columns.exercised });
-  } else {
-    outputs.push({ node: exercises, column: columns.exercised });
-    outputs.push({ node: graph.subtract(running, exercises), column: columns.running });
-  }
-  return compile(graph, outputs, 0, layout.scratch, 'choice');
 }
 
 function buildGaps({ layout }: Programs, columns: OuterColumns, kind: OuterKind): Program {

@@ -21,6 +21,8 @@ export interface OuterSums {
   /** Paths on which the rule exercises at each date of the grid. */
   readonly exerciseCounts: readonly number[];
   readonly neverCount: number;
+  /** Paths that the ending event ends at each date while the right is unused; all 0 without one. */
+  readonly endedCounts: readonly number[];
 }
 
 /** The sums of no paths. */
@@ -34,6 +36,7 @@ export const noOuterSums = (dateCount: number): OuterSums => ({
   plain: noMoments,
   exerciseCounts: new Array<number>(dateCount).fill(0),
   neverCount: 0,
+  endedCounts: new Array<number>(dateCount).fill(0),
 });
 
 /** Adds the sums of two stretches of paths, the earlier first. */
@@ -48,5 +51,6 @@ export function mergeOuterSums(a: OuterSums, b: OuterSums): OuterSums {
     plain: mergeMoments(a.plain, b.plain),
     exerciseCounts: a.exerciseCounts.map((count, date) => count + b.exerciseCounts[date]!),
     neverCount: a.neverCount + b.neverCount,
+    endedCounts: a.endedCounts.map((count, date) => count + b.endedCounts[date]!),
   };
 }

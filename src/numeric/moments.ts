@@ -26,6 +26,15 @@ export function mergeMoments(a: Moments, b: Moments): Moments {
   };
 }
 
+/** The moments of the other values of a sample in which so many are zeros that do not count. */
+export function momentsWithoutZeros({ count, mean, squares }: Moments, zeroCount: number): Moments {
+  const left = count - zeroCount;
+  if (zeroCount === 0) return { count, mean, squares };
+  if (left === 0) return noMoments;
+  const meanOfLeft = (mean * count) / left;
+  return { count: left, mean: meanOfLeft, squares: Math.max(0, squares - mean * meanOfLeft * zeroCount) };
+}
+
 /** Unbiased sample variance; 0 for a sample of one. */
 export function varianceOf(moments: Moments): number {
   return moments.count > 1 ? moments.squares / (moments.count - 1) : 0;

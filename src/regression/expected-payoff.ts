@@ -26,11 +26,27 @@ export function writeExpectedPayoff(
   pairCount: number,
   payoff: (states: readonly Node[]) => Node,
 ): Node {
-  const values = evenPoints(drivers.length, pairCount).map((point) => {
-    const innovations = point.map((draw) => graph.constant(draw));
-    return payoff(writeStep(model, graph, drivers, states, innovations, duration));
-  });
+  const values = writePointStates(model, graph, drivers, states, duration, pairCount).map(payoff);
   return graph.multiply(graph.constant(1 / values.length), graph.sum(values));
+}
+
+/**
+ * Writes the drivers after a time for each of the fixed points; asked twice for one time, the graph holds them once.
+ *
+ * @shape points × drivers
+ */
+export function writePointStates(
+  model: CheckedModel,
+  graph: Graph,
+  drivers: readonly Driver[],
+  states: readonly Node[],
+  duration: Node,
+  pairCount: number,
+): Node[][] {
+  return evenPoints(drivers.length, pairCount).map((point) => {
+    const innovations = point.map((draw) => graph.constant(draw));
+    return writeStep(model, graph, drivers, states, innovations, duration);
+  });
 }
 
 /** Standard normal points, evenly spread and symmetric about 0. @shape 2 × pairs, dimensions */

@@ -23,7 +23,12 @@ export function groupDrivers(model: CheckedModel, drivers: readonly Driver[]): D
 }
 
 function contractExpressions({ contract }: CheckedModel): Expression[] {
-  return [contract.payoff.tree, ...(contract.atExpiry.kind === 'pays' ? [contract.atExpiry.amount.tree] : [])];
+  const { payoff, atExpiry, endingEvent } = contract;
+  return [
+    payoff.tree,
+    ...(atExpiry.kind === 'pays' ? [atExpiry.amount.tree] : []),
+    ...(endingEvent === null ? [] : [endingEvent.event.tree, endingEvent.pays.tree]),
+  ];
 }
 
 function hasEqualMembers(model: CheckedModel, drivers: readonly Driver[], members: readonly number[]): boolean {

@@ -19,6 +19,8 @@ export interface Measures {
   readonly decidedBy: 'holder' | 'issuer';
   /** Outer paths on which the rule exercises at all. */
   readonly exercisedPathCount: number;
+  /** Outer paths that the ending event ends with the right unused; null without such an event. */
+  readonly endedPathCount: number | null;
 }
 
 /** What the judge says: doubts, each with its number, and the checks that found nothing. */
@@ -143,18 +145,21 @@ function effort({ plan, lower, upper }: Measures): Finding {
  * A payoff that few paths ever reach: what the others would have shown is unknown, and the normal interval too short.
  * An event that n paths never showed may still have a probability of 3/n (95%, "rule of three").
  */
-function rareExercise({ lower, exercisedPathCount }: Measures): Finding {
+function rareExercise({ lower, upper, decidedBy, exercisedPathCount, endedPathCount }: Measures): Finding {
+  const { pathCount } = decidedBy === 'holder' ? lower : upper;
+  // Where every path ends by the event, there is nothing left that a path could show.
+  if (endedPathCount === pathCount) return { passed: 'The ending event ends the contract on every outer path.' };
   if (exercisedPathCount >= fewestExercisedPaths) {
     return {
-      passed: `The rule exercises on ${paths(exercisedPathCount)} of the ${paths(lower.pathCount)} outer paths.`,
+      passed: `The rule exercises on ${paths(exercisedPathCount)} of the ${paths(pathCount)} outer paths.`,
     };
   }
   return {
     doubt: advice('effort-too-small', {
-      what: `The rule exercises on only ${paths(exercisedPathCount)} of the ${paths(lower.pathCount)} outer paths.`,
-      why: `The value rests on rare paths: a payoff with a probability up to ${percent(Math.min(1, 3 / lower.pathCount))} may not have shown at all, and the 95% interval may be too narrow and too low.`,
+      what: `The rule exercises on only ${paths(exercisedPathCount)} of the ${paths(pathCount)} outer paths.`,
+      why: `The value rests on rare paths: a payoff with a probability up to ${percent(Math.min(1, 3 / pathCount))} may not have shown at all, and the 95% interval may be too narrow and too low.`,
       mend: 'Raise `counts: { outer: … }` under method until some hundred paths exercise.',
-      evidence: { exercisedPathCount, outerPathCount: lower.pathCount },
+      evidence: { exercisedPathCount, outerPathCount: pathCount },
     }),
   };
 }

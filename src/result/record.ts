@@ -108,12 +108,14 @@ export interface RoundFinding {
 export interface DateFinding {
   readonly time: number;
   readonly exerciseShare: number;
+  /** Share of paths that the ending event ends here while the right is unused; null without such an event. */
+  readonly endedShare: number | null;
   /** Columns kept in the regression. */
   readonly keptColumnCount: number;
   readonly droppedColumns: readonly string[];
   /** Share of the response's variance that the basis explains. */
   readonly explainedShare: number | null;
-  /** Mean worth of holding past this date over the fit's paths, in money of today; null at the last date. */
+  /** Mean worth of holding past this date, in money of today, over the fit's paths that may; null at the last date. */
   readonly continuationMean: number | null;
 }
 
@@ -152,8 +154,10 @@ export interface RunRecord {
   readonly exact: null;
   readonly basis: { readonly columns: readonly string[]; readonly martingalePolynomials: readonly string[] };
   readonly dates: readonly DateFinding[];
-  /** Share of paths on which the right is never used. */
+  /** Share of paths that reach the last date with the right unused. */
   readonly neverExercisedShare: number;
+  /** Share of paths that the ending event ends before the right is used; null without such an event. */
+  readonly endedByEventShare: number | null;
   readonly exerciseTimeQuantiles: { readonly p05: number; readonly p50: number; readonly p95: number } | null;
   /** Findings that doubt the result, each with its number. */
   readonly advice: readonly Message[];

@@ -117,21 +117,31 @@ export class Block {
   }
 
   /**
-   * Writes discounted payoff, terminal amount and, before the last date, the basis columns for the drivers in `next`.
+   * Writes discounted payoff, terminal amount, whether the ending event holds and, before the last date, the basis columns
+   * for the drivers in `next`.
    */
   evaluate(date: number, rule: Rule, firstPath: number): void {
-    const { times, discountFactors: factors, variableCount, layout, amounts, evaluate } = this.programs;
+    const {
+      times,
+      discountFactors: factors,
+      variableCount,
+      layout,
+      amounts,
+      evaluate,
+      todayIsDecisionDate,
+    } = this.programs;
     const program = date === times.length - 1 ? amounts : evaluate;
     const { uniforms } = this.loaded(program);
     uniforms[dateUniforms.clock] = times[date]!;
     uniforms[dateUniforms.discountFactor] = factors[date]!;
     uniforms[dateUniforms.untilNext] = (times[date + 1] ?? times[date]!) - times[date]!;
     uniforms[dateUniforms.untilLast] = times.at(-1)! - times[date]!;
+    uniforms[dateUniforms.isDecisionDate] = date > 0 || todayIsDecisionDate ? 1 : 0;
     const firstStandard = date * variableCount * 2;
     for (let i = 0; i < variableCount * 2; i++)
       uniforms[dateUniforms.firstStandard + i] = rule.standards[firstStandard + i]!;
     this.run(program);
-    this.#checkFinite(layout.payoff, 2, date, firstPath);
+    this.#checkFinite(layout.payoff, layout.basis - layout.payoff, date, firstPath);
   }
 
   /** Says which basis column is not finite, if one is. */
@@ -147,7 +157,7 @@ export class Block {
 
   /**
    * Writes the fitted value at `next` to `value`: the larger of payoff and continuation value, which goes to `hold`; on
-   * the last date the terminal amount.
+   * the last date the terminal amount. Where the ending event holds, what it pays.
    */
   value(date: number, rule: Rule, firstPath: number): void {
     const { layout, times, columns, value } = this.programs;
@@ -210,17 +220,21 @@ export class Block {
     if (this.interpreter.areBetween(first, count, Number.NEGATIVE_INFINITY, this.lanes)) return;
     const place = this.#firstWhere(first, count, (value) => !Number.isFinite(value));
     if (place === null) throw new Error('a check for finite numbers failed without one that is not');
-    const { layout, columns, payoffLine, times } = this.programs;
-    const bad = first + place.position;
-    const column = bad >= layout.basis ? columns[bad - layout.basis]! : null;
-    const what =
-      column !== null
-        ? `the basis column ${column.name}`
-        : bad === layout.payoff
-          ? 'the payoff'
-          : 'the amount at expiry';
-    const line = column !== null ? column.line : payoffLine;
-    throw new NotFinite({ what, line, path: firstPath + place.lane, date, time: times[date]! });
+    const { what, line } = this.#nameOf(first + place.position, place.lane);
+    throw new NotFinite({ what, line, path: firstPath + place.lane, date, time: this.programs.times[date]! });
+  }
+
+  /** What stands in a column of amounts or of the basis on one lane, and its line. */
+  #nameOf(column: number, lane: number): { what: string; line: number | null } {
+    const { layout, columns, payoffLine, endingLines } = this.programs;
+    if (column >= layout.basis) {
+      const { name, line } = columns[column - layout.basis]!;
+      return { what: `the basis column ${name}`, line };
+    }
+    const ended = layout.ended === null ? 0 : this.column(layout.ended)[lane]!;
+    if (Number.isNaN(ended)) return { what: 'the ending event', line: endingLines!.event };
+    if (ended !== 0) return { what: 'the amount that the ending event pays', line: endingLines!.pays };
+    return { what: column === layout.payoff ? 'the payoff' : 'the amount at expiry', line: payoffLine };
   }
 
   /** The first value that meets a test, column by column. */

@@ -6,6 +6,7 @@ import { lower } from '../program/lower.js';
 import { automaticBasis } from '../regression/automatic-basis.js';
 import type { Basis, Column } from '../regression/basis.js';
 import { basisSizes } from '../regression/basis-size.js';
+import { writeEndingColumns } from '../regression/ending-columns.js';
 import { largestDriverCount, writeExpectedPayoff } from '../regression/expected-payoff.js';
 import { statedBasis } from '../regression/stated-basis.js';
 import { type DriverGroup, type Variable, writeVariables } from '../regression/variables.js';
@@ -16,7 +17,15 @@ import type { DriverLayout } from './layout.js';
  * Uniform inputs of the programs that look at one date, by position; mean and inverse spread of each variable follow
  * from `firstStandard` on.
  */
-export const dateUniforms = { clock: 0, discountFactor: 1, untilNext: 2, untilLast: 3, firstStandard: 4 } as const;
+export const dateUniforms = {
+  clock: 0,
+  discountFactor: 1,
+  untilNext: 2,
+  untilLast: 3,
+  /** 1 where somebody may decide, 0 today if nobody may. */
+  isDecisionDate: 4,
+  firstStandard: 5,
+} as const;
 
 /** Everything about one date as a function of the drivers in `next`: amounts, basis, variables before standardising. */
 export interface DateGraph {
@@ -52,9 +61,9 @@ export function writeDateGraph(
   const clock = graph.uniform(dateUniforms.clock);
   const factor = graph.uniform(dateUniforms.discountFactor);
   const meanings = meaningsOfState(model, graph, drivers, states, clock);
-  const amounts = writeAmounts(graph, model.contract, meanings, factor);
+  const amounts = writeAmounts(graph, model.contract, meanings, factor, graph.uniform(dateUniforms.isDecisionDate));
   if (model.method.basis !== 'auto') {
-    const basis = statedBasis(model.method.basis, graph, meanings);
+    const basis = unlessEnded(graph, statedBasis(model.method.basis, graph, meanings), amounts);
     return {
       graph,
       amounts,
@@ -87,8 +96,12 @@ export function writeDateGraph(
     };
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
     payoffs.push({ name: 'payoff expected at the last date', node: expectedAfter(dateUniforms.untilLast) });
+    const untilNext = graph.uniform(dateUniforms.untilNext);
+    const untilLast = graph.uniform(dateUniforms.untilLast);
+    const times = { clock, untilNext, untilLast };
+    payoffs.push(...writeEndingColumns(model, graph, drivers, states, amounts.payoff, times, basisSize.pairCount));
   }
-  const basis = automaticBasis(graph, standardised, payoffs, basisSize);
+  const basis = unlessEnded(graph, automaticBasis(graph, standardised, payoffs, basisSize), amounts);
   const uniformCount = dateUniforms.firstStandard + 2 * variables.length;
   return {
     graph,
@@ -99,4 +112,15 @@ export function writeDateGraph(
     sizeCount: sizes.length,
     pathsPerColumn: basisSize.pathsPerColumn,
   };
+}
+
+/**
+ * Makes every column 0 where the ending event holds, the constant too: such a state has no continuation, and so adds
+ * nothing to the regression and takes nothing from it.
+ */
+function unlessEnded(graph: Graph, basis: Basis, { ended }: Amounts): Basis {
+  if (ended === null) return basis;
+  const zero = graph.constant(0);
+  const columns = basis.columns.map((column) => ({ ...column, node: graph.apply('select', ended, zero, column.node) }));
+  return { ...basis, columns };
 }

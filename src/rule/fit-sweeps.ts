@@ -1,4 +1,4 @@
-import { type Moments, mergeMoments, noMoments } from '../numeric/moments.js';
+import { type Moments, mergeMoments, momentsWithoutZeros, noMoments } from '../numeric/moments.js';
 import type { Block } from './block.js';
 import { type BlockRange, type FitStore, forEachBlock, loadPaths, valuesAt } from './fit-store.js';
 import { NotFinite } from './not-finite.js';
@@ -13,6 +13,7 @@ export interface SweepSums {
   readonly products: Float64Array;
   /** Σ column × response × polynomial. @shape polynomials × integrand columns */
   readonly integrandProducts: Float64Array;
+  /** Over the paths whose contract goes on at the date. */
   readonly response: Moments;
 }
 
@@ -22,7 +23,7 @@ export interface SweepSums {
  */
 export function sweepValues(block: Block, store: FitStore, rule: Rule, date: number, range: BlockRange): SweepSums {
   const { interpreter } = block;
-  const { layout, columns } = block.programs;
+  const { layout, columns, unlessEnded } = block.programs;
   const sums = emptySums(block.programs, 'gram');
   let response = noMoments;
   forEachBlock(block, range, store.pathCount, (index, firstPath) => {
@@ -30,10 +31,11 @@ export function sweepValues(block: Block, store: FitStore, rule: Rule, date: num
     valuesAt(store, date + 1, firstPath, block.lanes).set(block.column(layout.value));
     loadPaths(block, store, index, date);
     block.evaluate(date, rule, firstPath);
+    if (layout.ended !== null) block.run(unlessEnded);
     interpreter.accumulateGram(layout.basis, columns.length, block.lanes, sums.gram);
     if (!hasFiniteSquares(sums.gram)) refuseColumns(block, sums.gram, date, firstPath);
     interpreter.accumulateProducts(layout.basis, columns.length, layout.value, 1, block.lanes, sums.products);
-    response = mergeMoments(response, interpreter.moments(layout.value, block.lanes));
+    response = mergeMoments(response, responseMoments(block, layout.value));
   });
   return { ...sums, response };
 }
@@ -114,9 +116,15 @@ function sweepProducts(
       lanes,
       integrandProducts,
     );
-    response = mergeMoments(response, interpreter.moments(stage, lanes));
+    response = mergeMoments(response, responseMoments(block, stage));
   });
   return { ...sums, response };
+}
+
+/** Moments of a response that is 0 where the contract ends at the date: over the other lanes. */
+function responseMoments({ interpreter, programs, lanes }: Block, column: number): Moments {
+  const { ended } = programs.layout;
+  return momentsWithoutZeros(interpreter.moments(column, lanes), ended === null ? 0 : interpreter.sum(ended, lanes));
 }
 
 /** Says which basis column is not finite, or too large for its square to be. */

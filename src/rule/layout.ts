@@ -9,6 +9,8 @@ export interface Layout {
   /** Discounted payoff, then the terminal amount. */
   readonly payoff: number;
   readonly terminal: number;
+  /** 1 where the contract ends by its event at this date; null where it has none. */
+  readonly ended: number | null;
   readonly basis: number;
   readonly variables: number;
   readonly polynomials: number;
@@ -24,22 +26,25 @@ export interface Layout {
 }
 
 /** The part of the layout that comes before the basis, whose size is not known yet. */
-export type DriverLayout = Pick<Layout, 'state' | 'innovations' | 'next' | 'payoff' | 'terminal' | 'basis'>;
+export type DriverLayout = Pick<Layout, 'state' | 'innovations' | 'next' | 'payoff' | 'terminal' | 'ended' | 'basis'>;
 
-/** Lays out the columns that depend on the count of drivers alone. */
-export function layOutDrivers(driverCount: number): DriverLayout {
+/** Lays out the columns that depend on the count of drivers and the clauses of the contract alone. */
+export function layOutDrivers(driverCount: number, hasEndingEvent: boolean): DriverLayout {
   const payoff = 3 * driverCount;
-  return { state: 0, innovations: driverCount, next: 2 * driverCount, payoff, terminal: payoff + 1, basis: payoff + 2 };
+  const terminal = payoff + 1;
+  const ended = hasEndingEvent ? terminal + 1 : null;
+  const basis = (ended ?? terminal) + 1;
+  return { state: 0, innovations: driverCount, next: 2 * driverCount, payoff, terminal, ended, basis };
 }
 
 /** Lays out the whole workspace. */
 export function layOut(
+  first: DriverLayout,
   driverCount: number,
   columnCount: number,
   variableCount: number,
   polynomialCount: number,
 ): Layout {
-  const first = layOutDrivers(driverCount);
   const variables = first.basis + columnCount;
   const polynomials = variables + variableCount;
   const integrands = polynomials + polynomialCount;

@@ -1,4 +1,5 @@
-import { continuationFloor, decisionSign } from '../clauses/amounts.js';
+import { decisionSign } from '../clauses/amounts.js';
+import { continuationFloor } from '../clauses/continuation-floor.js';
 import { discountFactors } from '../clauses/discount.js';
 import { writePolynomials } from '../martingale/polynomials.js';
 import { type Driver, listDrivers } from '../paths/drivers.js';
@@ -10,7 +11,7 @@ import { groupDrivers } from '../regression/groups.js';
 import type { DriverGroup } from '../regression/variables.js';
 import type { CheckedModel } from '../scenario/model.js';
 import { writeDateGraph } from './date-graph.js';
-import { type Layout, layOut, layOutDrivers } from './layout.js';
+import { type DriverLayout, type Layout, layOut, layOutDrivers } from './layout.js';
 
 /** What one column of a regression or one driver is called, and the line that it comes from. */
 export interface Named {
@@ -31,11 +32,16 @@ export interface Programs {
   readonly variables: Program;
   /** Martingale polynomials of the innovations, given `state`. */
   readonly polynomials: Program;
-  /** From payoff and the regression's continuation value in `hold`: its proved floor put in, and the larger to `value`. */
+  /**
+   * From payoff and the regression's continuation value in `hold`: its proved floor put in, and the larger to `value`; the
+   * amount of the ending event where that holds.
+   */
   readonly value: Program;
   /** What the fit carries back along a path: what the rule brings, drawn towards `hold`; from and to as `buildCarry` says. */
   readonly carry: Program;
-  /** `value` less what the first column of the stages holds, to the latter. */
+  /** `value` made 0 where the contract ends at the date in `next`: it belongs to no continuation. */
+  readonly unlessEnded: Program;
+  /** `value`, where the contract goes on, less what the first column of the stages holds, to the latter. */
   readonly rest: Program;
   /** Response × polynomial for each polynomial, from the first column of the stages to those after it. */
   readonly responses: Program;
@@ -57,6 +63,8 @@ export interface Programs {
   readonly floor: 0 | null;
   readonly sign: 1 | -1;
   readonly payoffLine: number | null;
+  /** Lines of the ending event and of what it pays. */
+  readonly endingLines: { readonly event: number | null; readonly pays: number | null } | null;
 }
 
 /**
@@ -68,24 +76,28 @@ export interface Programs {
 export function buildPrograms(model: CheckedModel, basisSize = 0): Programs {
   const drivers = listDrivers(model);
   const groups = groupDrivers(model, drivers);
+  const { contract } = model;
+  const { endingEvent } = contract;
+  const first = layOutDrivers(drivers.length, endingEvent !== null);
   const { graph, amounts, basis, variables, uniformCount, sizeCount, pathsPerColumn } = writeDateGraph(
     model,
     drivers,
     groups,
-    layOutDrivers(drivers.length),
+    first,
     basisSize,
   );
-  const innovations = writePolynomialGraph(drivers, groups);
-  const layout = layOut(drivers.length, basis.columns.length, variables.length, innovations.polynomials.length);
+  const innovations = writePolynomialGraph(drivers, groups, first);
+  const layout = layOut(first, drivers.length, basis.columns.length, variables.length, innovations.polynomials.length);
   const amountOutputs = [
     { node: amounts.payoff, column: layout.payoff },
     { node: amounts.terminal, column: layout.terminal },
+    ...(amounts.ended === null ? [] : [{ node: amounts.ended, column: layout.ended! }]),
   ];
-  const { contract } = model;
-  const floor = continuationFloor(contract);
   const dates = contract.decisionDates;
   const times = dates[0] === 0 ? dates : [0, ...dates];
   const constants = new Map(model.constants.map(({ name, value }) => [name, value]));
+  const positiveDrivers = new Set(drivers.filter(({ law }) => law.isPositive).map(({ family }) => family.name));
+  const floor = continuationFloor(contract, { constants, positiveDrivers });
   return {
     layout,
     step: buildStepProgram(model, drivers, layout),
@@ -107,6 +119,7 @@ export function buildPrograms(model: CheckedModel, basisSize = 0): Programs {
     ),
     value: buildValue(layout, floor),
     carry: buildCarry(layout, times.length - 1),
+    unlessEnded: buildUnlessEnded(layout),
     rest: buildRest(layout),
     responses: buildResponses(layout, innovations.polynomials.length),
     drivers: drivers.map(({ name, start, family, law }) => ({
@@ -128,6 +141,7 @@ export function buildPrograms(model: CheckedModel, basisSize = 0): Programs {
     floor,
     sign: decisionSign(contract),
     payoffLine: contract.payoff.line,
+    endingLines: endingEvent === null ? null : { event: endingEvent.event.line, pays: endingEvent.pays.line },
   };
 }
 
@@ -139,8 +153,8 @@ export function withoutMartingale(programs: Programs): Programs {
 
 /** All programs, in the order in which a block loads them. */
 export function programList(programs: Programs): Program[] {
-  const { step, evaluate, amounts, variables, polynomials, value, carry, rest, responses } = programs;
-  return [step, evaluate, amounts, variables, polynomials, value, carry, rest, responses];
+  const { step, evaluate, amounts, variables, polynomials, value, carry, unlessEnded, rest, responses } = programs;
+  return [step, evaluate, amounts, variables, polynomials, value, carry, unlessEnded, rest, responses];
 }
 
 /** Columns of the workspace that all programs together need. */
@@ -159,21 +173,22 @@ export function largestNumberCount({ columns, drivers, integrandColumnCount, pol
   );
 }
 
-function buildValue({ payoff, hold, value, scratch }: Layout, floor: 0 | null): Program {
+function buildValue({ payoff, ended, hold, value, scratch }: Layout, floor: 0 | null): Program {
   const graph = new Graph();
   const regressed = graph.column(hold);
   const held = floor === null ? regressed : graph.apply('maximum', regressed, graph.constant(floor));
   const larger = graph.apply('maximum', graph.column(payoff), held);
+  const worth = ended === null ? larger : graph.apply('select', graph.column(ended), graph.column(payoff), larger);
   const floored = floor === null ? [] : [{ node: held, column: hold }];
-  return compile(graph, [...floored, { node: larger, column: value }], 0, scratch, 'value');
+  return compile(graph, [...floored, { node: worth, column: value }], 0, scratch, 'value');
 }
 
 /** Dates, as a share of all, over which the fit looks ahead along its own paths before it trusts the fitted value. */
 const lookAheadShare = 1 / 3;
 
 /**
- * Turns `value`, the fitted one at a date, into what the date before regresses on: where the rule exercises the payoff,
- * elsewhere C + λ (G - C), with G in the first column of the stages what the path brings later less its martingale, and
+ * Turns `value`, the fitted one at a date, into what the date before regresses on: where the rule exercises the payoff, where
+ * the contract ends what that pays, elsewhere C + λ (G - C), with G in the first column of the stages what the path brings later less its martingale, and
  * λ = 1 - 1 / (dates looked ahead). For few dates λ is 0 and `value` stays.
  *
  * Regressing on the fitted value alone projects the bend of max(payoff, C) anew at each date, and over hundreds of dates
@@ -182,20 +197,33 @@ const lookAheadShare = 1 / 3;
  *
  * @source Sutton (1988), Machine Learning 3, 9-44: temporal differences, with the λ of that paper
  */
-function buildCarry({ hold, value, stage, scratch }: Layout, dateCount: number): Program {
+function buildCarry({ ended, hold, value, stage, scratch }: Layout, dateCount: number): Program {
   const share = Math.max(0, 1 - 1 / (lookAheadShare * dateCount));
   const graph = new Graph();
   const held = graph.column(hold);
   const fitted = graph.column(value);
   const ahead = graph.subtract(graph.column(stage), held);
   const carried = graph.add(held, graph.multiply(graph.constant(share), ahead));
-  const node = graph.apply('select', graph.apply('less', held, fitted), fitted, carried);
+  const brought = graph.apply('select', graph.apply('less', held, fitted), fitted, carried);
+  const node = ended === null ? brought : graph.apply('select', graph.column(ended), fitted, brought);
   return compile(graph, [{ node, column: value }], 0, scratch, 'carry');
 }
 
-function buildRest({ value, stage, scratch }: Layout): Program {
+function buildUnlessEnded(layout: Layout): Program {
   const graph = new Graph();
-  const rest = graph.subtract(graph.column(value), graph.column(stage));
+  const outputs = [{ node: writeUnlessEnded(graph, layout), column: layout.value }];
+  return compile(graph, outputs, 0, layout.scratch, 'value unless ended');
+}
+
+function writeUnlessEnded(graph: Graph, { value, ended }: Layout): Node {
+  const worth = graph.column(value);
+  return ended === null ? worth : graph.apply('select', graph.column(ended), graph.constant(0), worth);
+}
+
+function buildRest(layout: Layout): Program {
+  const { stage, scratch } = layout;
+  const graph = new Graph();
+  const rest = graph.subtract(writeUnlessEnded(graph, layout), graph.column(stage));
   return compile(graph, [{ node: rest, column: stage }], 0, scratch, 'rest');
 }
 
@@ -210,9 +238,12 @@ function buildResponses({ stage, polynomials, scratch }: Layout, polynomialCount
 }
 
 /** The polynomials of one step's innovations, given the drivers before it. */
-function writePolynomialGraph(drivers: readonly Driver[], groups: readonly DriverGroup[]) {
+function writePolynomialGraph(
+  drivers: readonly Driver[],
+  groups: readonly DriverGroup[],
+  { state, innovations }: DriverLayout,
+) {
   const graph = new Graph();
-  const { state, innovations } = layOutDrivers(drivers.length);
   const columnsFrom = (first: number) => drivers.map((_, index) => graph.column(first + index));
   return { graph, polynomials: writePolynomials(graph, drivers, groups, columnsFrom(state), columnsFrom(innovations)) };
 }

@@ -63,6 +63,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
   const gap = gapOf(findings, chosen.method);
   const basisIsAutomatic = model.method.basis === 'auto';
   const wantedWidth = widthAskedFor(findings);
+  const hasEvent = model.contract.endingEvent !== null;
   const judgement = judge({
     plan,
     columnCount: programs.columns.length,
@@ -75,7 +76,8 @@ export function makeRecord(findings: RunFindings): RunRecord {
     bracketWidth: bracket95.high - bracket95.low,
     wantedWidth,
     decidedBy: model.contract.decidedBy,
-    exercisedPathCount: outer.lower.count - outer.neverCount,
+    exercisedPathCount: total(outer.exerciseCounts),
+    endedPathCount: hasEvent ? total(outer.endedCounts) : null,
   });
   const text = typeof source === 'string' ? source : JSON.stringify(source);
   return {
@@ -103,6 +105,7 @@ export function makeRecord(findings: RunFindings): RunRecord {
     basis: { columns: programs.columns.map(({ name }) => name), martingalePolynomials: programs.polynomialNames },
     dates,
     neverExercisedShare: outer.neverCount / outer.lower.count,
+    endedByEventShare: hasEvent ? total(outer.endedCounts) / outer.lower.count : null,
     exerciseTimeQuantiles: exerciseTimeQuantiles(outer, programs),
     advice: judgement.advice,
     passedChecks: judgement.passedChecks,
@@ -123,7 +126,7 @@ function gapOf({ outer, nested }: RunFindings, method: BoundMethod): Estimate {
 }
 
 function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
-  const { times, todayIsDecisionDate, columns, sign } = programs;
+  const { times, todayIsDecisionDate, columns, sign, layout } = programs;
   const last = times.length - 1;
   return times.flatMap((time, date) => {
     if (date === 0 && !todayIsDecisionDate) return [];
@@ -132,6 +135,7 @@ function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
     return {
       time,
       exerciseShare,
+      endedShare: layout.ended === null ? null : outer.endedCounts[date]! / outer.lower.count,
       keptColumnCount: fit?.kept.length ?? 0,
       droppedColumns: fit?.dropped.map((column) => columns[column]!.name) ?? [],
       explainedShare: fit?.explainedShare ?? null,
@@ -140,14 +144,16 @@ function dateFindings({ programs, fits, outer }: RunFindings): DateFinding[] {
   });
 }
 
+const total = (counts: readonly number[]) => counts.reduce((sum, count) => sum + count, 0);
+
 /** Representatives that stand for all exercised paths in a quantile; enough for a ten-thousandth. */
 const mostRepresentatives = 10_000;
 
 /** Quantiles of the exercise time among the paths that exercise at all; null if none does. */
 function exerciseTimeQuantiles(outer: OuterSums, { times }: Programs): RunRecord['exerciseTimeQuantiles'] {
-  const total = outer.exerciseCounts.reduce((sum, count) => sum + count, 0);
-  if (total === 0) return null;
-  const scale = Math.min(1, mostRepresentatives / total);
+  const exercisedCount = total(outer.exerciseCounts);
+  if (exercisedCount === 0) return null;
+  const scale = Math.min(1, mostRepresentatives / exercisedCount);
   const exercised = outer.exerciseCounts.flatMap((count, date) =>
     new Array<number>(Math.ceil(count * scale)).fill(times[date]!),
   );

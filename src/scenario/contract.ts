@@ -3,6 +3,7 @@ import { nearest } from '../messages/nearest.js';
 import { listed, quoted } from '../messages/printable.js';
 import { functionShapes } from '../program/functions.js';
 import { readDecisionDates } from './decision-dates.js';
+import { readEndingEvent } from './ending-event.js';
 import { echo, readExpression, readNumber } from './read-expression.js';
 import { type Reading, stateScope } from './reading.js';
 import { entryOf, type ScalarNode, type TreeNode, under } from './tree.js';
@@ -26,13 +27,16 @@ export function readContract(reading: Reading): Contract | null {
   const payoff = readExpression(payoffNode, stateScope(reading, 'the payoff'), reading);
   if (payoff !== null) settings.fromText('contract.payoff', echo(payoff, null), payoffNode!);
   const atExpiry = readAtExpiry(node, decidedBy, reading);
+  const mayEnd = node.kind === 'map' && node.entries.has('ends when');
+  const endingEvent = mayEnd ? readEndingEvent(node, reading) : null;
   const discountNode = under(node, 'discount');
   const discount = readNumber(discountNode, 'the discount rate', reading);
   if (discount !== null)
     settings.fromText('contract.discount', echo(discount.expression, discount.value), discountNode!);
   if (decisionDates === null || payoff === null || atExpiry === null || discount === null) return null;
   if (decidedBy !== 'holder' && decidedBy !== 'issuer') return null;
-  return { decidedBy, decisionDates, payoff, atExpiry, discount: discount.expression };
+  if (mayEnd && endingEvent === null) return null;
+  return { decidedBy, decisionDates, payoff, atExpiry, endingEvent, discount: discount.expression };
 }
 
 /** A word alone that names nothing: not an amount, but a choice that was misspelt. */

@@ -109,7 +109,20 @@ const clauses: readonly ClauseToCome[] = [
     when: (node) => node.kind === 'map',
   },
   { path: ['contract', 'while held'], what: 'Income while the contract is held is', instead: leaveOut },
-  { path: ['contract', 'ends when'], what: 'An ending event is', instead: leaveOut },
+  {
+    path: ['contract', 'ends when'],
+    what: 'A list of ending events is',
+    instead:
+      'Write one event that joins them with `or`, and what each pays as if(first event, its amount, other amount).',
+    when: (node) => node.kind === 'list',
+  },
+  {
+    path: ['contract', 'ends when', 'watched'],
+    what: 'An ending event that is watched at every step is',
+    instead:
+      'Write `watched: decision dates`; that is then the value of another contract, which goes on where a path crosses between two dates and comes back.',
+    when: (node) => node.kind === 'scalar' && node.text === 'steps',
+  },
   {
     path: ['contract', 'rights'],
     what: 'Several rights are',

@@ -46,13 +46,14 @@ export function setFaultsAside(root: MapNode): Remainder | null {
 }
 
 /**
- * The part that goes with a fault: a constant or driver as a whole, elsewhere the key. Null for what must be there, and
+ * The part that goes with a fault: a constant, a driver or the clause `ends when` as a whole, elsewhere the key. Null for what must be there, and
  * for `at expiry`, whose absence would be a mistake of its own for an issuer.
  */
 function removable(path: Path): Path | null {
   const [section, name] = path;
   if (section !== undefined && declaring.has(section) && name !== undefined) return [section, name];
   if (section === 'contract' && name === 'at expiry') return null;
+  if (section === 'contract' && name === 'ends when') return [section, name];
   const firstItem = path.findIndex((step) => typeof step === 'number');
   const keys = firstItem < 0 ? path : path.slice(0, firstItem);
   return keys.length === 0 ? null : keys;

@@ -67,6 +67,8 @@ export const recordShape = z.looseObject({
   basis: z.looseObject({ columns: z.array(z.string()), martingalePolynomials: z.array(z.string()) }),
   dates: z.array(z.looseObject({ time: z.number(), exerciseShare: z.number() })),
   neverExercisedShare: z.number(),
+  // Records made before ending events were built do not have it.
+  endedByEventShare: z.number().nullable().optional(),
   exerciseTimeQuantiles: z.looseObject({ p05: z.number(), p50: z.number(), p95: z.number() }).nullable(),
   advice: z.array(message),
   passedChecks: z.array(z.string()),

@@ -34,6 +34,7 @@ function crossed(): readonly Message[] {
     wantedWidth: null,
     decidedBy: 'holder',
     exercisedPathCount: 500,
+    endedPathCount: null,
   }).advice;
 }
 

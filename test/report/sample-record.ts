@@ -16,6 +16,7 @@ export const sampleAdvice: Message = {
 const dates = Array.from({ length: 30 }, (_, index) => ({
   time: (index + 1) / 10,
   exerciseShare: index === 29 ? 0.31 : 0.01,
+  endedShare: null,
   keptColumnCount: index === 29 ? 0 : index === 0 ? 9 : 10,
   droppedColumns: index === 0 ? ['smallest(grove)'] : [],
   explainedShare: index === 29 ? null : 0.4 + 0.018 * index,
@@ -72,6 +73,7 @@ export const sampleRecord: RunRecord = {
   },
   dates,
   neverExercisedShare: 0.4,
+  endedByEventShare: null,
   exerciseTimeQuantiles: { p05: 0.3, p50: 2.6, p95: 3 },
   advice: [],
   passedChecks: ['The bounds do not cross.', 'Every regression kept enough paths for each column.'],

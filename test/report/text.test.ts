@@ -159,6 +159,37 @@ describe('doubt', () => {
   });
 });
 
+describe('a contract that an event may end', () => {
+  const record: RunRecord = {
+    ...sampleRecord,
+    dates: sampleRecord.dates.map((date, index) => ({ ...date, endedShare: index === 3 ? 0.07 : 0 })),
+    neverExercisedShare: 0.33,
+    endedByEventShare: 0.07,
+  };
+  const text = textReport(record);
+
+  it('has a column and a sentence for the paths that it ends, and accounts for every path', () => {
+    expect(text).toMatch(/share of paths +so far +ended/);
+    const shares = text
+      .split('\n')
+      .flatMap((line) => {
+        const dated = /^ {2}[\d.]+ to [\d.]+ +([\d.]+)% +[\d.]+% +([\d.]+)%/.exec(line)?.slice(1);
+        return dated ?? /^ {2}never +([\d.]+)%/.exec(line)?.slice(1) ?? [];
+      })
+      .map(Number);
+    expect(shares.reduce((sum, share) => sum + share, 0)).toBeCloseTo(100, 6);
+    expect(oneLine(text)).toContain(
+      'On 7.0% of the paths the ending event ends the contract before the right is used.',
+    );
+  });
+
+  it('says nothing of it where no event can end the contract, or the record is from before', () => {
+    const { endedByEventShare, ...older } = record;
+    expect(endedByEventShare).toBe(0.07);
+    for (const other of [sampleRecord, older as RunRecord]) expect(textReport(other)).not.toMatch(/ended|ending event/);
+  });
+});
+
 describe('odd records', () => {
   it('takes a right that is never used, one date, no pilot and no nested bound', () => {
     const record: RunRecord = {
