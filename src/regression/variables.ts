@@ -24,12 +24,15 @@ export interface DriverGroup {
 /**
  * Writes the variables: the logarithm of positive drivers, the plain value of others; like members sorted, largest
  * first, and cut at the leading ranks, with the mean of all members standing for the rest.
+ *
+ * @param arranged the states with like members in falling order, if somebody has sorted them all already
  */
 export function writeVariables(
   graph: Graph,
   drivers: readonly Driver[],
   groups: readonly DriverGroup[],
   states: readonly Node[],
+  arranged: readonly Node[] | null,
 ): Variable[] {
   return groups.flatMap(({ name, exchangeable, members }) => {
     const coordinate = (node: Node, index: number) =>
@@ -41,11 +44,15 @@ export function writeVariables(
         leading: true,
       }));
     }
-    const sorted = sortFalling(
-      graph,
-      members.map((index) => states[index]!),
-      Math.min(members.length, leadingRankCount),
-    );
+    const leadingCount = Math.min(members.length, leadingRankCount);
+    const sorted =
+      arranged === null
+        ? sortFalling(
+            graph,
+            members.map((index) => states[index]!),
+            leadingCount,
+          )
+        : members.slice(0, leadingCount).map((index) => arranged[index]!);
     const ranks = sorted.map((node, rank) => ({
       name: `${name} ranked ${rank + 1}`,
       node: coordinate(node, members[0]!),

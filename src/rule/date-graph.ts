@@ -3,6 +3,7 @@ import type { Driver } from '../paths/drivers.js';
 import { meaningsOfState } from '../paths/meanings.js';
 import { Graph, type Node } from '../program/graph.js';
 import { lower } from '../program/lower.js';
+import { arrangeStates } from '../regression/arrange-states.js';
 import { automaticBasis } from '../regression/automatic-basis.js';
 import type { Basis, Column } from '../regression/basis.js';
 import { basisSizes } from '../regression/basis-size.js';
@@ -74,7 +75,8 @@ export function writeDateGraph(
       pathsPerColumn: statedPathsPerColumn,
     };
   }
-  const variables = writeVariables(graph, drivers, groups, states);
+  const arranged = drivers.length <= largestDriverCount ? arrangeStates(graph, groups, states) : null;
+  const variables = writeVariables(graph, drivers, groups, states, arranged);
   const standardised = variables.map(({ name, node, leading }, index) => {
     const mean = graph.uniform(dateUniforms.firstStandard + 2 * index);
     const inverseSpread = graph.uniform(dateUniforms.firstStandard + 2 * index + 1);
@@ -84,14 +86,14 @@ export function writeDateGraph(
   const basisSize = sizes[size];
   if (basisSize === undefined) throw new Error(`the automatic basis has no size ${size}`);
   const payoffs: Column[] = [{ name: 'payoff', node: amounts.payoff }];
-  if (drivers.length <= largestDriverCount) {
+  if (arranged !== null) {
     const expectedAfter = (uniform: number) => {
       const duration = graph.uniform(uniform);
       const payoffAt = (nodes: readonly Node[]) => {
         const later = meaningsOfState(model, graph, drivers, nodes, graph.add(clock, duration));
         return lower(model.contract.payoff.tree, graph, later);
       };
-      const expected = writeExpectedPayoff(model, graph, drivers, states, duration, basisSize.pairCount, payoffAt);
+      const expected = writeExpectedPayoff(model, graph, drivers, arranged, duration, basisSize.pairCount, payoffAt);
       return writeScaled(graph, model.contract, expected, factor);
     };
     payoffs.push({ name: 'payoff expected at the next date', node: expectedAfter(dateUniforms.untilNext) });
@@ -99,7 +101,7 @@ export function writeDateGraph(
     const untilNext = graph.uniform(dateUniforms.untilNext);
     const untilLast = graph.uniform(dateUniforms.untilLast);
     const times = { clock, untilNext, untilLast };
-    payoffs.push(...writeEndingColumns(model, graph, drivers, states, amounts.payoff, times, basisSize.pairCount));
+    payoffs.push(...writeEndingColumns(model, graph, drivers, arranged, amounts.payoff, times, basisSize.pairCount));
   }
   const basis = unlessEnded(graph, automaticBasis(graph, standardised, payoffs, basisSize), amounts);
   const uniformCount = dateUniforms.firstStandard + 2 * variables.length;
