@@ -10,9 +10,13 @@ const smallestFitPathCount = 32_768;
 const largestFitPathCount = 262_144;
 const fitPathStep = 4096;
 
+/** Dates beyond which fewer paths do: the fits of neighbouring dates then tell nearly the same (measured). */
+const mostDatesInFull = 50;
+
 /** Paths of the fit when nobody says: in proportion to the columns, within limits, in whole parcels. */
-export function defaultFitPathCount(programs: Programs): number {
-  const wanted = Math.ceil((programs.pathsPerColumn * programs.columns.length) / fitPathStep) * fitPathStep;
+export function defaultFitPathCount({ pathsPerColumn, columns, times }: Programs): number {
+  const share = Math.min(1, mostDatesInFull / (times.length - 1));
+  const wanted = Math.ceil((share * pathsPerColumn * columns.length) / fitPathStep) * fitPathStep;
   return Math.min(largestFitPathCount, Math.max(smallestFitPathCount, wanted));
 }
 

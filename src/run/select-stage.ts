@@ -17,7 +17,7 @@ const gainShare = 0.9;
 /** Sizes in a row that gain nothing, after which none larger is tried: a trial errs, and some size fits badly. */
 const mostWithoutGain = 2;
 /** Bounds that cost more than so many times the next fit are worth trying it for. */
-const boundsPerFit = 1;
+const boundsPerFit = 1.3;
 /** Share of a budget's rest that the next fit may take. */
 const budgetShare = 0.4;
 
