@@ -58,7 +58,7 @@ export async function profileScenario(source: string, path: string, environment:
   const { plan } =
     fixedPlan(scenario, options, candidate) ??
     (await staged('pilot', () =>
-      choosePlan({ candidate, context, executor, fits }, scenario, options, environment, now()),
+      choosePlan({ candidate, context, executor, fits, milliseconds: 0 }, scenario, options, environment, now()),
     ));
   await staged('bounds', async () => {
     await runOuter(executor, programs, 'outer', plan, plan.round, undefined, () => {});

@@ -13,6 +13,8 @@ export interface Fitted {
   readonly context: JobContext;
   readonly executor: Executor;
   readonly fits: readonly StepFit[];
+  /** How long the fit took; only a time budget looks at it. */
+  readonly milliseconds: number;
 }
 
 /** What stages take beside the model. */
@@ -41,8 +43,9 @@ export class FitBench {
     const context = openContext(programs, this.seed, counts.fitPathCount, kernels, keeping);
     const executor = environment.openExecutor(context, this.workerCount);
     this.#open.add(executor);
+    const started = environment.now();
     const fits = await runFit(executor, programs, context.rule, context.store, options.signal, options.onProgress);
-    return { candidate, context, executor, fits };
+    return { candidate, context, executor, fits, milliseconds: environment.now() - started };
   }
 
   /** Ends the workers of a rule that is not wanted any more. */

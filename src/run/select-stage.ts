@@ -46,15 +46,17 @@ export async function selectFit(
     return { size, trial };
   };
   let bestTrial = await tryOut(best);
+  let latest = best;
   let ended: SelectionFinding['ended'] = 'no larger size';
   let withoutGain = 0;
   for (const candidate of larger) {
-    const verdict = worthTrying(bench, candidate, best.candidate, bestTrial, started);
+    const verdict = worthTrying(bench, candidate, latest, bestTrial, started);
     if (verdict !== null) {
       ended = verdict;
       break;
     }
     const fitted = await bench.fit(candidate);
+    latest = fitted;
     const trial = await tryOut(fitted);
     const isBetter = betterThan(trial, bestTrial);
     const gains = trial.size.expectedWidth < gainShare * bestTrial.size.expectedWidth;
@@ -89,14 +91,14 @@ interface Tried {
 function worthTrying(
   { environment, options }: FitBench,
   next: Candidate,
-  current: Candidate,
+  latest: Fitted,
   tried: Tried,
   started: number,
 ): SelectionFinding['ended'] | null {
   if (options.budgetSeconds !== undefined) {
-    const elapsed = (environment.now() - started) / 1000;
-    const pace = elapsed / current.operations;
-    const isAffordable = next.operations * pace <= budgetShare * (options.budgetSeconds - elapsed);
+    const secondsLeft = options.budgetSeconds - (environment.now() - started) / 1000;
+    const seconds = (next.operations * latest.milliseconds) / latest.candidate.operations / 1000;
+    const isAffordable = seconds <= budgetShare * secondsLeft;
     return isAffordable ? null : 'larger size too costly';
   }
   const isEnough = reaches(tried) && tried.size.boundsOperations <= boundsPerFit * next.operations;
