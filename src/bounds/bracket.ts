@@ -20,7 +20,9 @@ export function boundOf(moments: Moments, sign: 1 | -1): Bound {
 
 /** Probability that the bracket of a round misses: half as much in each further round, so that all of them stay rare. */
 export function errorProbability(round: number): number {
-  return 0.05 * 2 ** (1 - round);
+  let probability = 0.05;
+  for (let earlier = 1; earlier < round; earlier++) probability /= 2;
+  return probability;
 }
 
 /** Standard errors from each bound to its end of a round's bracket. */
