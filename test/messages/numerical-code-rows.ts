@@ -49,7 +49,7 @@ export const numericalCodeRows: readonly CodeRow[] = [
   ['not-finite', () => refusal(lots({ payoff: 'max(0, log(largest(lot) - 100))', method: [small] }))],
   ['memory-beyond-machine', tooSmall],
   ['fit-memory-too-small', () => refusal(lots({ method: [small] }), { fitMemoryBytes: 1000 })],
-  ['fewer-paths-than-columns', () => refusal(lots({ method: ['counts: { fit: 20 }'] }))],
+  ['fewer-paths-than-columns', () => refusal(lots({ method: ['counts: { fit: 10 }'] }))],
   ['plan-does-not-fit', () => refusal(lots(), { plan: { ...smallPlan, outerPathCount: 0.5 } })],
   ['defect', () => [defectMessage(new Error('a column has no meaning'))]],
   ['thin-fit', () => adviceOf(['counts: { fit: 1000, outer: 512, inner: 8 }'])],
