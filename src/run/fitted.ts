@@ -41,7 +41,9 @@ export class FitBench {
     const context = openContext(programs, this.seed, counts.fitPathCount, kernels, keeping);
     const executor = environment.openExecutor(context, this.workerCount);
     this.#open.add(executor);
-    const fits = await runFit(executor, programs, context.rule, context.store, options.signal, options.onProgress);
+    const onProgress: StageOptions['onProgress'] = (progress) =>
+      options.onProgress({ ...progress, columnCount: programs.columns.length });
+    const fits = await runFit(executor, programs, context.rule, context.store, options.signal, onProgress);
     return { candidate, context, executor, fits };
   }
 
