@@ -18,6 +18,9 @@ export function boundOf(moments: Moments, sign: 1 | -1): Bound {
   return { ...asHeld(moments, sign), pathCount: moments.count };
 }
 
+/** Rounds of final draws that a run may make: with all of them the probabilities below add up to 8.75%. */
+export const mostRounds = 3;
+
 /** Probability that the bracket of a round misses: half as much in each further round, so that all of them stay rare. */
 export function errorProbability(round: number): number {
   let probability = 0.05;
