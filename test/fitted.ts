@@ -73,7 +73,7 @@ export async function fitted(
           block,
           outer,
           context.rule,
-          { purpose, pathCount, innerPointCount },
+          { purpose, round: 1, pathCount, innerPointCount },
           { firstBlock: 0, blockCount: Math.ceil(pathCount / 512) },
         ),
       ),

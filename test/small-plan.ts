@@ -2,6 +2,8 @@ import type { Plan } from '#built/result/record.js';
 
 /** Counts for a run of a moment. */
 export const smallPlan: Plan = {
+  basisSize: 0,
+  round: 1,
   fitPathCount: 3000,
   outerPathCount: 512,
   innerPointCount: 8,

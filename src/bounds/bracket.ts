@@ -18,9 +18,14 @@ export function boundOf(moments: Moments, sign: 1 | -1): Bound {
   return { ...asHeld(moments, sign), pathCount: moments.count };
 }
 
+/** Rounds of final draws that a run may make: with all of them the probabilities below add up to 8.75%. */
+export const mostRounds = 3;
+
 /** Probability that the bracket of a round misses: half as much in each further round, so that all of them stay rare. */
 export function errorProbability(round: number): number {
-  return 0.05 * 2 ** (1 - round);
+  let probability = 0.05;
+  for (let earlier = 1; earlier < round; earlier++) probability /= 2;
+  return probability;
 }
 
 /** Standard errors from each bound to its end of a round's bracket. */

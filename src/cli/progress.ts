@@ -1,14 +1,6 @@
 import cliProgress from 'cli-progress';
 import type { Progress } from '../run/options.js';
-
-const STAGE_WORDS: Readonly<Record<Progress['stage'], string>> = {
-  fit: 'fitting the rule',
-  select: 'trying the basis',
-  pilot: 'pilot',
-  bounds: 'both bounds',
-  nested: 'Andersen-Broadie bound',
-};
-const WORDS_WIDTH = Math.max(...Object.values(STAGE_WORDS).map((words) => words.length));
+import { stageWords, stageWordsWidth } from './stage-words.js';
 
 /** Shows how far a run is; `end` clears the line. */
 export interface ProgressDisplay {
@@ -28,10 +20,10 @@ export function timeLeft(elapsedSeconds: number, done: number, total: number): s
 
 const SILENT: ProgressDisplay = { show: () => {}, end: () => {} };
 
-/** A bar with the stage and the time left of it, on a terminal; nothing anywhere else. */
+/** A bar with the stage, its round or size of the basis, and the time left of it, on a terminal; nothing anywhere else. */
 export function progressOn(stream: NodeJS.WriteStream): ProgressDisplay {
   if (!stream.isTTY) return SILENT;
-  let stage: Progress['stage'] | null = null;
+  let words: string | null = null;
   let stageStart = 0;
   const bar = new cliProgress.SingleBar({
     stream,
@@ -46,23 +38,24 @@ export function progressOn(stream: NodeJS.WriteStream): ProgressDisplay {
     format: (options, params, payload) => {
       const bars = cliProgress.Format.BarFormat(params.progress, options);
       const share = `${Math.floor(100 * params.progress)}%`.padStart(4);
-      return `${payload.words.padEnd(WORDS_WIDTH)} ${bars} ${share}  ${payload.left}`;
+      return `${payload.words.padEnd(stageWordsWidth)} ${bars} ${share}  ${payload.left}`;
     },
   });
   return {
     show: (progress) => {
       const now = performance.now();
-      if (progress.stage !== stage) {
-        if (stage !== null) bar.stop();
-        stage = progress.stage;
+      const current = stageWords(progress);
+      if (current !== words) {
+        if (words !== null) bar.stop();
+        words = current;
         stageStart = now;
-        bar.start(progress.total, 0, { words: STAGE_WORDS[stage], left: '' });
+        bar.start(progress.total, 0, { words, left: '' });
       }
       bar.update(progress.done, { left: timeLeft((now - stageStart) / 1000, progress.done, progress.total) });
     },
     end: () => {
-      if (stage !== null) bar.stop();
-      stage = null;
+      if (words !== null) bar.stop();
+      words = null;
     },
   };
 }

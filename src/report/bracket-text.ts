@@ -31,6 +31,13 @@ interface Sentence {
   readonly dressed: string;
 }
 
+/** A bracket of the first round is the usual 95% one; those of further rounds reach farther out and say so. */
+function kindOfBracket({ plan, rounds }: RunRecord): string {
+  const { standardErrors } = rounds.find(({ round }) => round === plan.round) ?? { standardErrors: null };
+  if (plan.round === 1 || standardErrors === null) return '95% bracket';
+  return `bracket of round ${plan.round}, ${standardErrors.toFixed(2)} standard errors beyond each bound`;
+}
+
 /** The one sentence that answers the question: between what and what the value lies. */
 function bracketSentence(record: RunRecord): Sentence {
   const { low, high } = record.bracket95;
@@ -52,7 +59,11 @@ function bracketSentence(record: RunRecord): Sentence {
   const middle = Math.abs((low + high) / 2);
   const width = middle > 0 ? `, ${relativePercent((high - low) / middle)} wide` : '';
   const dressed = `${from} and ${to} ${money}`;
-  return { role: 'strong', text: `Value to the holder: between ${dressed} (95% bracket${width}).`, dressed };
+  return {
+    role: 'strong',
+    text: `Value to the holder: between ${dressed} (${kindOfBracket(record)}${width}).`,
+    dressed,
+  };
 }
 
 /** Estimates that cross by no more than their error, which a reader of the table would stumble over. */

@@ -48,24 +48,30 @@ function workWords(work: number | null): string {
 function forecastText(forecast: Forecast, width: number, style: Style): string {
   const machine =
     forecast.machineMemoryBytes === null ? '' : ` of the machine's ${memory(forecast.machineMemoryBytes)}`;
-  const { fit, bounds, nested } = forecast.work;
+  const { sizeCount, work } = forecast;
+  const { fit, bounds, nested } = work;
+  const most = sizeCount > 1 ? 'at most ' : '';
   const table = layOut(
     {
       heads: ['', 'forecast'],
       rows: [
-        ['memory at the peak', `about ${memory(forecast.peakMemoryBytes)}${machine}`],
+        ['memory at the peak', `${most}about ${memory(forecast.peakMemoryBytes)}${machine}`],
         [
           'regression',
-          `${counted(forecast.columnCount, 'column')}, ${counted(forecast.polynomialCount, 'martingale polynomial')}`,
+          `${most}${counted(forecast.columnCount, 'column')}, ${counted(forecast.polynomialCount, 'martingale polynomial')}`,
         ],
-        ['work to fit the rule', workWords(fit)],
+        ['work to fit the rule', `${most}${workWords(fit)}`],
         ['work for the bounds', workWords(bounds)],
         ...(nested === 0 ? [] : [['work for the Andersen-Broadie bound', workWords(nested)]]),
       ],
     },
     style,
   );
-  const meaning = 'A path-date is one path moved by one date, with its regression columns.';
+  const choice =
+    sizeCount > 1
+      ? `Up to ${sizeCount} sizes of the automatic basis are fitted in turn, from small to large, and one is kept: this is what the largest needs, beside the others. `
+      : '';
+  const meaning = `${choice}A path-date is one path moved by one date, with its regression columns.`;
   return `${table}\n\n${paragraph(pathsSentence(forecast.paths), width)}\n${style('quiet', paragraph(meaning, width))}`;
 }
 

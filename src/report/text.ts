@@ -6,6 +6,8 @@ import { exerciseText } from './exercise-text.js';
 import { basisText, planText, timingText } from './plan-text.js';
 import { paragraph, wrapWords } from './prose.js';
 import { changedText, reproduceText } from './reproduce-text.js';
+import { roundsText } from './rounds-text.js';
+import { selectionText } from './selection-text.js';
 import { plainStyle, type Style } from './style.js';
 
 /** Said once, plainly, where a reader decides; the README has it in full. */
@@ -57,12 +59,17 @@ export function textReport(record: RunRecord, layout: RunTextLayout = {}): strin
     );
   }
   if (changed !== null) head.push(changed.replace(/^ {2}/gm, ''));
+  const { selection, rounds } = record;
   const checks = record.passedChecks.map((check) => paragraph(`${style('good', '✓')} ${printable(check)}`, width));
   const parts = [
     head.join('\n'),
     boundsText(record, width, style),
     section('Exercise', exerciseText(record, width, style), style),
+    ...(selection === null
+      ? []
+      : [section('Choice of the basis', selectionText(selection, record.scenario.money, width, style), style)]),
     section('Plan', planText(record, width), style),
+    ...(rounds.length < 2 ? [] : [section('Rounds', roundsText(rounds, record.scenario.money, width, style), style)]),
     section('Basis', basisText(record, width), style),
     adviceText(record.advice, width, style),
     ...(checks.length > 0 ? [section('Checks passed', checks.join('\n'), style)] : []),

@@ -1,27 +1,10 @@
 import { advice } from '../messages/build.js';
 import type { Message } from '../messages/message.js';
 import { jointError } from '../numeric/estimate.js';
-import type { BoundEstimate, DateFinding, Estimate, Plan } from './record.js';
-
-/** The measures of a finished run that may cast doubt on it. */
-export interface Measures {
-  readonly plan: Plan;
-  readonly columnCount: number;
-  readonly basisIsAutomatic: boolean;
-  readonly dates: readonly DateFinding[];
-  readonly lower: BoundEstimate;
-  readonly upper: BoundEstimate;
-  readonly uppers: readonly BoundEstimate[];
-  readonly gap: Estimate;
-  readonly bracketWidth: number;
-  /** Null when fixed counts were asked for instead of a width. */
-  readonly wantedWidth: number | null;
-  readonly decidedBy: 'holder' | 'issuer';
-  /** Outer paths on which the rule exercises at all. */
-  readonly exercisedPathCount: number;
-  /** Outer paths that the ending event ends with the right unused; null without such an event. */
-  readonly endedPathCount: number | null;
-}
+import { remedyForGap } from './gap-remedy.js';
+import { type Finding, type Measures, paths } from './measures.js';
+import { missedWidth } from './missed-width.js';
+import type { BoundEstimate } from './record.js';
 
 /** What the judge says: doubts, each with its number, and the checks that found nothing. */
 export interface Judgement {
@@ -29,7 +12,6 @@ export interface Judgement {
   readonly passedChecks: readonly string[];
 }
 
-const paths = (count: number) => count.toLocaleString('en-US');
 const percent = (share: number) => `${(100 * share).toPrecision(2)}%`;
 
 /** Fit paths for each column below which the regression error alone is a visible part of the gap; common practice. */
@@ -44,11 +26,9 @@ const fewestExercisedPaths = 100;
 /** Standard errors between crossed bounds that noise does not explain: about one false alarm in 15,000 runs. */
 const crossingErrors = 4;
 
-type Finding = { readonly doubt: Message } | { readonly passed: string };
-
 /** Judges a finished run. */
 export function judge(measures: Measures): Judgement {
-  const findings = [thinFit, rankLoss, wideGap, crossedBounds, effort, rareExercise, width]
+  const findings = [thinFit, rankLoss, wideGap, crossedBounds, effort, rareExercise, missedWidth]
     .map((question) => question(measures))
     .filter((found) => found !== null);
   return {
@@ -85,7 +65,8 @@ function rankLoss({ basisIsAutomatic, dates }: Measures): Finding | null {
   };
 }
 
-function wideGap({ gap, lower, plan, basisIsAutomatic }: Measures): Finding {
+function wideGap(measures: Measures): Finding {
+  const { gap, lower } = measures;
   const share = gap.value === 0 ? 0 : gap.value / Math.abs(lower.value);
   const text = `The gap between the bounds is ${percent(share)} of the value.`;
   if (!(share > wideGapShare)) return { passed: share < 0 ? 'The bounds lie closer than their error.' : text };
@@ -93,21 +74,10 @@ function wideGap({ gap, lower, plan, basisIsAutomatic }: Measures): Finding {
     doubt: advice('wide-gap', {
       what: text,
       why: 'The gap is what the fitted rule and martingale miss. More outer paths do not close it.',
-      mend:
-        plan.upper === 'regressed'
-          ? takeOneStep(plan)
-          : basisIsAutomatic
-            ? `Raise \`counts: { fit: … }\` under method above ${paths(plan.fitPathCount)}, or try \`upper: andersen-broadie\`.`
-            : 'Use `basis: auto`, or add columns that tell when holding is worth more.',
+      mend: remedyForGap(measures),
       evidence: { gap: gap.value, share },
     }),
   };
-}
-
-/** What closes the gap of a bracket that the regressed martingale makes. */
-function takeOneStep({ innerPointCount }: Plan): string {
-  const lines = innerPointCount === 0 ? '`upper: regressed` and `inner: 0`' : '`upper: regressed`';
-  return `Take ${lines} out of method, so that the one-step martingale makes the bound.`;
 }
 
 function crossedBounds({ lower, upper, uppers, decidedBy }: Measures): Finding {
@@ -160,27 +130,6 @@ function rareExercise({ lower, upper, decidedBy, exercisedPathCount, endedPathCo
       why: `The value rests on rare paths: a payoff with a probability up to ${percent(Math.min(1, 3 / pathCount))} may not have shown at all, and the 95% interval may be too narrow and too low.`,
       mend: 'Raise `counts: { outer: … }` under method until some hundred paths exercise.',
       evidence: { exercisedPathCount, outerPathCount: pathCount },
-    }),
-  };
-}
-
-function width({ plan, bracketWidth, wantedWidth, gap, lower, upper }: Measures): Finding | null {
-  if (wantedWidth === null) return null;
-  const figures = `${bracketWidth.toPrecision(3)} where ${wantedWidth.toPrecision(3)} was wanted`;
-  if (bracketWidth <= wantedWidth) return { passed: `The bracket is as narrow as wanted: ${figures}.` };
-  const noise = (lower.halfWidth95 ?? 0) + (upper.halfWidth95 ?? 0);
-  const stuck = gap.value > noise ? 'the gap between the bounds' : 'the noise of the estimates';
-  return {
-    doubt: advice('width-missed', {
-      what: `The bracket is ${figures}; most of it is ${stuck} (gap ${gap.value.toPrecision(2)}, noise ${noise.toPrecision(2)}).`,
-      why: 'The bracket is valid as it stands; it was not drawn again until it looked narrow, since that would make it too often wrong.',
-      mend:
-        gap.value > noise && plan.upper === 'regressed'
-          ? takeOneStep(plan)
-          : gap.value > noise
-            ? 'Improve `basis`, or raise `counts: { fit: …, inner: … }` under method.'
-            : 'Ask for the same `bracket width` with a larger --budget, or raise `counts: { outer: … }` under method.',
-      evidence: { bracketWidth, wantedWidth, gap: gap.value, noise },
     }),
   };
 }

@@ -81,14 +81,23 @@ export interface SizeTried {
   readonly boundsOperations: number;
 }
 
+/** Why no larger size of the automatic basis was tried. */
+export type SizesEnded =
+  | 'width in reach'
+  | 'no gain'
+  | 'no larger size'
+  | 'larger size too costly'
+  /** The scenario fixes the paths of the fit, and they are too few for more columns. */
+  | 'too few paths'
+  | 'too little memory';
+
 /** How the size of the automatic basis was chosen, on paths of their own; null where there was no choice. */
 export interface SelectionFinding {
   readonly outerPathCount: number;
   readonly innerPointCount: number;
   readonly tried: readonly SizeTried[];
   readonly chosenSize: number;
-  /** Why no larger size was tried. */
-  readonly ended: 'width in reach' | 'no gain' | 'no larger size' | 'larger size too costly';
+  readonly ended: SizesEnded;
 }
 
 /** One round of final draws; each after the first is made because the one before missed the wanted width. */
@@ -176,8 +185,10 @@ export interface RunRecord {
   readonly versions: { readonly tarry: string; readonly node: string };
 }
 
-/** What a run will need, said before it starts. */
+/** What a run will need, said before it starts; where it may try several sizes of the basis, what it needs at most. */
 export interface Forecast {
+  /** Sizes that may be tried, one after another; columns and paths are those of the largest. */
+  readonly sizeCount: number;
   /** Bytes resident at the peak, all threads together. */
   readonly peakMemoryBytes: number;
   readonly machineMemoryBytes: number | null;

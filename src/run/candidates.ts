@@ -1,5 +1,5 @@
 import type { Message } from '../messages/message.js';
-import type { Forecast } from '../result/record.js';
+import type { Forecast, SizesEnded } from '../result/record.js';
 import { fitOperations } from '../rule/operations.js';
 import { type PathKeeping, workFactor } from '../rule/path-keeping.js';
 import { buildPrograms, type Programs } from '../rule/programs.js';
@@ -24,7 +24,12 @@ export interface Candidate {
 
 /** The sizes that a run may try, from small to large; or why there is none. */
 export type CandidatesOutcome =
-  | { readonly kind: 'open'; readonly candidates: readonly Candidate[] }
+  | {
+      readonly kind: 'open';
+      readonly candidates: readonly Candidate[];
+      /** Why there is no larger one; null where nothing is left to choose. */
+      readonly ended: SizesEnded | null;
+    }
   | { readonly kind: 'refused'; readonly messages: readonly Message[] };
 
 /** Paths of the fit for each column, below which a size is not tried when the scenario fixes the paths. */
@@ -56,19 +61,32 @@ export function openCandidates(
   const first = candidateOf(smallest);
   if (first.kind === 'refused') return first;
   const candidates = [first.candidate];
+  let ended: SizesEnded = 'no larger size';
   for (let size = 1; size < smallest.basisSizeCount; size++) {
     const next = candidateOf(buildPrograms(model, size));
-    if (next.kind === 'refused' || !isAffordable(next.candidate, method.fitPathCount, options)) break;
+    const obstacle =
+      next.kind === 'refused' ? 'too little memory' : obstacleTo(next.candidate, method.fitPathCount, options);
+    if (next.kind === 'refused' || obstacle !== null) {
+      ended = obstacle!;
+      break;
+    }
     candidates.push(next.candidate);
   }
-  if (method.outerPathCount === null || method.innerPointCount === null) return { kind: 'open', candidates };
+  if (method.basis !== 'auto') return { kind: 'open', candidates, ended: null };
+  if (method.outerPathCount === null || method.innerPointCount === null) return { kind: 'open', candidates, ended };
   const size = method.fitPathCount === null ? sizeWithoutChoice : candidates.length - 1;
-  return { kind: 'open', candidates: [candidates[Math.min(size, candidates.length - 1)]!] };
+  return { kind: 'open', candidates: [candidates[Math.min(size, candidates.length - 1)]!], ended: null };
 }
 
-function isAffordable({ programs, counts, operations }: Candidate, fixed: number | null, options: CandidateOptions) {
-  if (fixed !== null && counts.fitPathCount < fewestPathsPerColumn * programs.columns.length) return false;
-  return options.budgetSeconds !== undefined || operations <= defaultOperationLimit;
+/** What keeps a size from being tried; null if nothing does. */
+function obstacleTo(
+  { programs, counts, operations }: Candidate,
+  fixedFitPathCount: number | null,
+  { budgetSeconds }: CandidateOptions,
+): SizesEnded | null {
+  const isThin = counts.fitPathCount < fewestPathsPerColumn * programs.columns.length;
+  if (fixedFitPathCount !== null && isThin) return 'too few paths';
+  return budgetSeconds === undefined && operations > defaultOperationLimit ? 'larger size too costly' : null;
 }
 
 type CandidateOptions = Pick<ValueOptions, 'plan' | 'fitMemoryBytes' | 'budgetSeconds'>;
@@ -78,7 +96,7 @@ type Described =
   | { readonly kind: 'refused'; readonly messages: readonly Message[] };
 
 function only(described: Described): CandidatesOutcome {
-  return described.kind === 'refused' ? described : { kind: 'open', candidates: [described.candidate] };
+  return described.kind === 'refused' ? described : { kind: 'open', candidates: [described.candidate], ended: null };
 }
 
 function describe(

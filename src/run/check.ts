@@ -1,5 +1,6 @@
 import { openCandidates } from './candidates.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
+import { forecastOfSizes } from './forecast.js';
 import { judgeOptions } from './judge-options.js';
 import type { CheckOptions, CheckOutcome } from './options.js';
 import { prepare } from './prepare.js';
@@ -13,6 +14,6 @@ export function checkScenario(source: string | object, options: CheckOptions, en
   const { scenario, programs } = outcome.prepared;
   const opened = openCandidates(scenario.model, programs, options, environment, defaultWorkerCount(environment));
   if (opened.kind === 'refused') return opened;
-  const { forecast } = opened.candidates.at(-1)!;
+  const forecast = forecastOfSizes(opened.candidates.map((candidate) => candidate.forecast));
   return { kind: 'checked', scenario, forecast, advice: [] };
 }

@@ -43,8 +43,10 @@ export class FitBench {
     const context = openContext(programs, this.seed, counts.fitPathCount, kernels, keeping);
     const executor = environment.openExecutor(context, this.workerCount);
     this.#open.add(executor);
+    const onProgress: StageOptions['onProgress'] = (progress) =>
+      options.onProgress({ ...progress, columnCount: programs.columns.length });
     const started = environment.now();
-    const fits = await runFit(executor, programs, context.rule, context.store, options.signal, options.onProgress);
+    const fits = await runFit(executor, programs, context.rule, context.store, options.signal, onProgress);
     return { candidate, context, executor, fits, milliseconds: environment.now() - started };
   }
 

@@ -3,7 +3,7 @@ import { sweepsPerDate } from '../rule/backward-induction.js';
 import type { PathKeeping } from '../rule/path-keeping.js';
 import type { Programs } from '../rule/programs.js';
 import { describeKeeping } from './fit-memory.js';
-import { peakMemoryBytes } from './peak-memory.js';
+import { peakMemoryBytes, peakMemoryOfTwo } from './peak-memory.js';
 
 /** What a run will need, from its counts alone. */
 export function forecastOf(
@@ -17,6 +17,7 @@ export function forecastOf(
   const paths = describeKeeping(programs, counts.fitPathCount, keeping);
   const columnCount = programs.columns.length;
   return {
+    sizeCount: 1,
     peakMemoryBytes: peakMemoryBytes(programs, counts, paths.bytes, workerCount),
     machineMemoryBytes,
     paths,
@@ -30,6 +31,20 @@ export function forecastOf(
     },
     columnCount,
     polynomialCount: programs.polynomialNames.length,
+  };
+}
+
+/**
+ * What a run needs at most that may try several sizes, from small to large: all of their fits, and the memory of two at
+ * once, since the best so far is held while another is fitted.
+ */
+export function forecastOfSizes(forecasts: readonly Forecast[]): Forecast {
+  const largest = forecasts.at(-1)!;
+  return {
+    ...largest,
+    sizeCount: forecasts.length,
+    peakMemoryBytes: peakMemoryOfTwo(forecasts.map(({ peakMemoryBytes: peak }) => peak)),
+    work: { ...largest.work, fit: forecasts.reduce((total, { work }) => total + work.fit, 0) },
   };
 }
 

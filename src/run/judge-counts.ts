@@ -1,3 +1,4 @@
+import { mostRounds } from '../bounds/bracket.js';
 import { mistake } from '../messages/build.js';
 import { memory } from '../messages/figures.js';
 import type { Message } from '../messages/message.js';
@@ -42,20 +43,22 @@ export function judgePlan(plan: Plan): Message[] {
     return [impossible(what, { upper })];
   }
   const isNested = upper === 'andersen-broadie';
-  const least = [
-    ['basisSize', 0],
-    ['round', 1],
-    ['fitPathCount', 1],
-    ['outerPathCount', 2],
-    ['innerPointCount', upper === 'one-step' ? 1 : 0],
-    ['nestedOuterPathCount', isNested ? 2 : 0],
-    ['nestedInnerPathCount', isNested ? 1 : 0],
+  const without = Number.POSITIVE_INFINITY;
+  const limits = [
+    ['basisSize', 0, without],
+    ['round', 1, mostRounds],
+    ['fitPathCount', 1, without],
+    ['outerPathCount', 2, without],
+    ['innerPointCount', upper === 'one-step' ? 1 : 0, without],
+    ['nestedOuterPathCount', isNested ? 2 : 0, without],
+    ['nestedInnerPathCount', isNested ? 1 : 0, without],
   ] as const;
-  return least
-    .filter(([name, fewest]) => !(Number.isSafeInteger(plan[name]) && plan[name] >= fewest))
-    .map(([name, fewest]) => {
-      const what = `The plan's ${name} is ${String(plan[name])}; it must be a whole number from ${fewest} up.`;
-      return impossible(what, { name, fewest });
+  return limits
+    .filter(([name, least, most]) => !(Number.isSafeInteger(plan[name]) && plan[name] >= least && plan[name] <= most))
+    .map(([name, least, most]) => {
+      const range = most === without ? `from ${least} up` : `from ${least} to ${most}`;
+      const what = `The plan's ${name} is ${String(plan[name])}; it must be a whole number ${range}.`;
+      return impossible(what, { name, least });
     });
 }
 

@@ -15,6 +15,7 @@ import type {
   RoundFinding,
   RunRecord,
   SelectionFinding,
+  SizesEnded,
 } from '../result/record.js';
 import type { StepFit } from '../rule/backward-induction.js';
 import type { Programs } from '../rule/programs.js';
@@ -29,6 +30,8 @@ export interface RunFindings {
   readonly programs: Programs;
   readonly plan: Plan;
   readonly selection: SelectionFinding | null;
+  /** Why no larger size was tried; null where nothing was left to choose. */
+  readonly sizesEnded: SizesEnded | null;
   readonly pilot: PilotFinding | null;
   readonly rounds: readonly RoundFinding[];
   readonly paths: PathsFinding;
@@ -68,6 +71,9 @@ export function makeRecord(findings: RunFindings): RunRecord {
     plan,
     columnCount: programs.columns.length,
     basisIsAutomatic,
+    sizesEnded: findings.sizesEnded,
+    innerIsFixed: model.method.innerPointCount !== null,
+    isComplete,
     dates,
     lower,
     upper,

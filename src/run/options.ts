@@ -11,7 +11,7 @@ export type InterpreterKind = (typeof interpreterKinds)[number];
 /** How far a run is. */
 export interface Progress {
   readonly stage: 'fit' | 'select' | 'pilot' | 'bounds' | 'nested';
-  /** Work done and in all, in the stage's own counts; `total` is fixed within a stage. */
+  /** Work done and in all, in the stage's own counts; `total` is fixed within a stage, round and size of the basis. */
   readonly done: number;
   readonly total: number;
   /** Round of the bracket's draws, from 1 on. */

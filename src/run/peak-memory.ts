@@ -43,6 +43,12 @@ export function peakMemoryBytes(
   );
 }
 
+/** The peak of a run that holds what one rule needs while it fits another, from the peaks of each alone. */
+export function peakMemoryOfTwo(peaks: readonly number[]): number {
+  const [most = 0, second] = [...peaks].sort((a, b) => b - a);
+  return second === undefined ? most : most + second - processBytes;
+}
+
 /** Parcels of the stage that has the most; a count that the pilot will set is taken to be enough for everybody. */
 function mostParcels(counts: ForecastCounts, fitParcelCount: number): number {
   if (counts.outerPathCount === null) return Number.POSITIVE_INFINITY;

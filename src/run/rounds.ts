@@ -1,4 +1,4 @@
-import { asHeld, bracketOf, errorProbability, standardErrorsInRound } from '../bounds/bracket.js';
+import { asHeld, bracketOf, errorProbability, mostRounds, standardErrorsInRound } from '../bounds/bracket.js';
 import type { NestedSums } from '../bounds/nested-paths.js';
 import type { OuterSums } from '../bounds/outer-sums.js';
 import { aim, chooseCounts, expectedWidth, modelOfPilot } from '../bounds/plan.js';
@@ -23,8 +23,6 @@ export interface RoundSums {
 export interface Rounds extends RoundSums {
   readonly rounds: readonly RoundFinding[];
 }
-
-const mostRounds = 3;
 
 /**
  * Draws the final paths; if the bracket misses the wanted width by noise, again on fresh streams with a plan made from

@@ -1,8 +1,8 @@
 import { aim } from '../bounds/plan.js';
-import type { SelectionFinding, SizeTried } from '../result/record.js';
+import type { SelectionFinding, SizesEnded, SizeTried } from '../result/record.js';
 import { stepOperations } from '../rule/operations.js';
 import type { Method } from '../scenario/model.js';
-import type { Candidate } from './candidates.js';
+import type { Candidate, CandidatesOutcome } from './candidates.js';
 import type { FitBench, Fitted } from './fitted.js';
 import { runTrial, type Trial } from './trial.js';
 
@@ -10,6 +10,8 @@ import { runTrial, type Trial } from './trial.js';
 export interface Selected {
   readonly fitted: Fitted;
   readonly selection: SelectionFinding | null;
+  /** Why no larger size was tried, even where one alone could be; null where nothing was left to choose. */
+  readonly ended: SizesEnded | null;
 }
 
 /** A larger size gains if it brings the expected width below this share of the best so far. */
@@ -31,13 +33,13 @@ const budgetShare = 0.4;
  */
 export async function selectFit(
   bench: FitBench,
-  candidates: readonly Candidate[],
+  { candidates, ended: endOfCandidates }: Extract<CandidatesOutcome, { kind: 'open' }>,
   method: Method,
   started: number,
 ): Promise<Selected> {
   const [first, ...larger] = candidates;
   let best = await bench.fit(first!);
-  if (larger.length === 0) return { fitted: best, selection: null };
+  if (larger.length === 0 || endOfCandidates === null) return { fitted: best, selection: null, ended: endOfCandidates };
   const trials: { size: SizeTried; trial: Trial }[] = [];
   const tryOut = async (fitted: Fitted) => {
     const trial = await runTrial(fitted, method, 'select', bench.options, bench.environment, started);
@@ -47,7 +49,7 @@ export async function selectFit(
   };
   let bestTrial = await tryOut(best);
   let latest = best;
-  let ended: SelectionFinding['ended'] = 'no larger size';
+  let ended = endOfCandidates;
   let withoutGain = 0;
   for (const candidate of larger) {
     const verdict = worthTrying(bench, candidate, latest, bestTrial, started);
@@ -79,6 +81,7 @@ export async function selectFit(
       chosenSize: best.candidate.programs.basisSize,
       ended,
     },
+    ended,
   };
 }
 
@@ -94,7 +97,7 @@ function worthTrying(
   latest: Fitted,
   tried: Tried,
   started: number,
-): SelectionFinding['ended'] | null {
+): SizesEnded | null {
   if (options.budgetSeconds !== undefined) {
     const secondsLeft = options.budgetSeconds - (environment.now() - started) / 1000;
     const seconds = (next.operations * latest.milliseconds) / latest.candidate.operations / 1000;

@@ -1,7 +1,6 @@
 import { NotFinite } from '../rule/not-finite.js';
 import type { CheckedScenario } from '../scenario/model.js';
-import type { Candidate } from './candidates.js';
-import { openCandidates } from './candidates.js';
+import { type CandidatesOutcome, openCandidates } from './candidates.js';
 import { defaultWorkerCount, type Environment } from './environment.js';
 import { describeKeeping } from './fit-memory.js';
 import { FitBench } from './fitted.js';
@@ -43,7 +42,7 @@ export async function valueScenario(
   };
   const bench = new FitBench(model.seed, workerCount, environment, { ...options, onProgress });
   try {
-    return { kind: 'delivered', record: await runStages(source, scenario, opened.candidates, bench) };
+    return { kind: 'delivered', record: await runStages(source, scenario, opened, bench) };
   } catch (problem) {
     if (problem instanceof Stopped) return { kind: 'stopped', stage };
     if (problem instanceof NotFinite)
@@ -57,13 +56,13 @@ export async function valueScenario(
 async function runStages(
   source: string | object,
   scenario: CheckedScenario,
-  candidates: readonly Candidate[],
+  opened: Extract<CandidatesOutcome, { kind: 'open' }>,
   bench: FitBench,
 ) {
   const { environment, options } = bench;
   const { method } = scenario.model;
   const started = environment.now();
-  const { fitted, selection } = await selectFit(bench, candidates, method, started);
+  const { fitted, selection, ended } = await selectFit(bench, opened, method, started);
   const { candidate, fits } = fitted;
   const { programs, keeping } = candidate;
   const fittedAt = environment.now();
@@ -80,6 +79,7 @@ async function runStages(
     scenario,
     programs,
     selection,
+    sizesEnded: ended,
     pilot,
     rounds,
     paths: describeKeeping(programs, plan.fitPathCount, keeping),

@@ -52,6 +52,40 @@ export const recordShape = z.looseObject({
   decidedBy: z.enum(['holder', 'issuer']),
   plan: planShape,
   pilot: z.looseObject({ expectedWidth: z.number(), wantedWidth: z.number().nullable() }).nullable(),
+  selection: z
+    .looseObject({
+      outerPathCount: z.number(),
+      tried: z.array(
+        z.looseObject({
+          basisSize: z.number(),
+          columnCount: z.number(),
+          fitPathCount: z.number(),
+          gap: z.number(),
+          expectedWidth: z.number(),
+        }),
+      ),
+      chosenSize: z.number(),
+      ended: z.enum([
+        'width in reach',
+        'no gain',
+        'no larger size',
+        'larger size too costly',
+        'too few paths',
+        'too little memory',
+      ]),
+    })
+    .nullable(),
+  rounds: z.array(
+    z.looseObject({
+      round: z.number(),
+      outerPathCount: z.number(),
+      innerPointCount: z.number(),
+      errorProbability: z.number(),
+      standardErrors: z.number(),
+      low: z.number(),
+      high: z.number(),
+    }),
+  ),
   paths: z.looseObject({
     kept: z.enum(['all', 'segments']),
     segmentDates: z.int().min(1),

@@ -29,7 +29,7 @@ test('two lots: the lower bound does not lie above the exact value, nor any uppe
     whole.block,
     whole.nested,
     whole.rule,
-    { pathCount: 1024, innerPathCount: 32 },
+    { round: 1, pathCount: 1024, innerPathCount: 32 },
     { firstBlock: 0, blockCount: 2 },
   );
   expect(oneSided(nested.upper)).toBeGreaterThan(-limit);

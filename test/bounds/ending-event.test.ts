@@ -63,7 +63,7 @@ test.each(cases)('$name: every bracket holds the independent quadrature and is n
     whole.block,
     whole.nested,
     whole.rule,
-    { pathCount: 2048, innerPathCount: 64 },
+    { round: 1, pathCount: 2048, innerPathCount: 64 },
     { firstBlock: 0, blockCount: 4 },
   );
   const nestedBracket = bracketOf(lower, nested.upper);

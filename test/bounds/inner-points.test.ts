@@ -37,7 +37,7 @@ function upperBounds({ programs, rule, context }: Fitted, change: (block: Block)
   const outer = buildOuterPrograms(programs);
   const block = new Block(programs, context.seed, wasmInterpreters(loadKernels()), outerProgramList(outer));
   change(block);
-  const work = { purpose: 'outer', pathCount: runCount * 512, innerPointCount } as const;
+  const work = { purpose: 'outer', round: 1, pathCount: runCount * 512, innerPointCount } as const;
   return Array.from(
     { length: runCount },
     (_, firstBlock) => runOuterPaths(block, outer, rule, work, { firstBlock, blockCount: 1 }).upper,

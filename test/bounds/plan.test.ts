@@ -10,6 +10,7 @@ const model: PilotModel = {
 };
 const request: PlanRequest = {
   wantedWidth: 0.14,
+  standardErrors: 1.96,
   stepLimit: 1e9,
   dateCount: 9,
   outerPathCount: null,

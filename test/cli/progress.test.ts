@@ -1,6 +1,7 @@
 import { PassThrough } from 'node:stream';
 import { describe, expect, it } from 'vitest';
 import { progressOn, timeLeft } from '#built/cli/progress.js';
+import { stageWords, stageWordsWidth } from '#built/cli/stage-words.js';
 
 describe('time left', () => {
   it.each([
@@ -13,6 +14,23 @@ describe('time left', () => {
     [10, 0, 4, ''],
   ])('after %s s with %s of %s done: "%s"', (elapsed, done, total, words) => {
     expect(timeLeft(elapsed, done, total)).toBe(words);
+  });
+});
+
+describe('what a run is doing', () => {
+  const at = { done: 1, total: 2 };
+
+  it.each([
+    [{ stage: 'fit' }, 'fitting the rule'],
+    [{ stage: 'fit', columnCount: 255 }, 'fitting the rule, 255 columns'],
+    [{ stage: 'select', columnCount: 1, round: 1 }, 'trying the basis, 1 column'],
+    [{ stage: 'pilot', columnCount: 24, round: 1 }, 'pilot'],
+    [{ stage: 'bounds', round: 1 }, 'both bounds'],
+    [{ stage: 'bounds', round: 2 }, 'both bounds, round 2'],
+    [{ stage: 'nested', round: 3 }, 'Andersen-Broadie bound, round 3'],
+  ] as const)('%j: %s', (progress, words) => {
+    expect(stageWords({ ...at, ...progress })).toBe(words);
+    expect(words.length).toBeLessThanOrEqual(stageWordsWidth);
   });
 });
 
@@ -47,5 +65,25 @@ describe('the bar', () => {
     expect(written()).toContain('fitting the rule');
     expect(written()).toContain('both bounds');
     expect(written().endsWith('\u001b[2K')).toBe(true);
+  });
+
+  it('begins anew with another size of the basis and with another round', () => {
+    const { stream, written } = standIn(true);
+    const bar = progressOn(stream);
+    const shown: string[] = [];
+    const show = (progress: Parameters<typeof bar.show>[0]) => {
+      const before = written().length;
+      bar.show(progress);
+      shown.push(written().slice(before));
+    };
+    show({ stage: 'fit', columnCount: 24, done: 2, total: 2 });
+    show({ stage: 'fit', columnCount: 59, done: 1, total: 9 });
+    show({ stage: 'bounds', round: 1, done: 4, total: 4 });
+    show({ stage: 'bounds', round: 2, done: 1, total: 8 });
+    bar.end();
+    expect(shown[1]).toContain('fitting the rule, 59 columns');
+    expect(shown[1]).toContain('  0%');
+    expect(shown[3]).toContain('both bounds, round 2');
+    expect(shown[3]).toContain('  0%');
   });
 });

@@ -6,6 +6,7 @@ const findings: CheckFindings = {
   title: 'Right to fell one of three groves',
   settings: sampleRecord.settings,
   forecast: {
+    sizeCount: 1,
     peakMemoryBytes: 120 * 1024 ** 2,
     machineMemoryBytes: 16 * 1024 ** 3,
     paths: sampleRecord.paths,
@@ -50,6 +51,15 @@ describe('the text of a check', () => {
     expect(checkReport({ ...findings, forecast: nested })).toMatch(
       /Andersen-Broadie bound +about 3 billion path-dates/,
     );
+  });
+
+  it('says that it is the most, where several sizes of the basis may be tried', () => {
+    const text = checkReport({ ...findings, forecast: { ...findings.forecast, sizeCount: 3 } });
+    expect(text).toMatch(/memory at the peak +at most about 126 MB/);
+    expect(text).toMatch(/regression +at most 10 columns, 3 martingale polynomials/);
+    expect(text).toMatch(/work to fit the rule +at most about 1\.2 million path-dates/);
+    expect(text).toContain('Up to 3 sizes of the automatic basis are fitted in turn');
+    expect(checkReport(findings)).not.toMatch(/at most|in turn/);
   });
 
   it('says whether the paths are kept or recomputed, and by which factor the simulation grows', () => {

@@ -121,6 +121,61 @@ describe('who decides', () => {
   });
 });
 
+describe('how the basis was chosen', () => {
+  const { selection } = sampleRecord;
+
+  it('shows every size that was tried, which was kept, and why no larger one was tried', () => {
+    const text = textReport(sampleRecord);
+    expect(row(text, '7')).toEqual(['7', '32,768', '0.021', '0.030']);
+    expect(row(text, '10')).toEqual(['10', '40,000', '0.012', '0.022', 'kept']);
+    expect(oneLine(text)).toContain(
+      'the kept one on 1,024. Paths are those of the fit; the width is that of the bracket',
+    );
+  });
+
+  it.each([
+    ['width in reach', 'the wanted width is in reach, for no more work than the next fit would take.'],
+    ['no gain', 'the last ones brought nothing worth their work.'],
+    ['no larger size', 'There is no larger size for this scenario.'],
+    ['larger size too costly', 'it would cost more than the run may take.'],
+    ['too few paths', 'the paths of the fit that the scenario fixes are too few for it.'],
+    ['too little memory', 'it does not fit into the memory.'],
+  ] as const)('says in words: %s', (ended, words) => {
+    expect(oneLine(textReport({ ...sampleRecord, selection: { ...selection!, ended } }))).toContain(words);
+  });
+
+  it('says nothing where there was no choice', () => {
+    expect(textReport({ ...sampleRecord, selection: null })).not.toContain('Choice of the basis');
+  });
+});
+
+describe('rounds', () => {
+  const [first] = sampleRecord.rounds;
+  const second = { ...first!, round: 2, outerPathCount: 90000, errorProbability: 0.025, standardErrors: 2.2414 };
+  const third = { ...second, round: 3, errorProbability: 0.0125, standardErrors: 2.4977, high: 16.16 };
+  const ofRound = (round: number, rounds: RunRecord['rounds']) =>
+    textReport({ ...sampleRecord, plan: { ...sampleRecord.plan, round }, rounds });
+
+  it('one alone needs no table', () => {
+    expect(textReport(sampleRecord)).not.toContain('Rounds');
+  });
+
+  it('more than one are shown with width, standard errors and error probability, and their sum', () => {
+    const text = ofRound(3, [first!, second, third]);
+    expect(row(text, '1')).toEqual(['1', '61,440', '16', '0.0187', '1.96', '5%']);
+    expect(row(text, '2')).toEqual(['2', '90,000', '16', '0.0187', '2.24', '2.5%']);
+    expect(row(text, '3')).toEqual(['3', '90,000', '16', '0.0098', '2.50', '1.25%']);
+    expect(oneLine(text)).toContain('all of them together with 8.75%.');
+  });
+
+  it('the bracket of a further round says its standard errors, that of a replay of it too', () => {
+    const words = 'crowns (bracket of round 2, 2.24 standard errors beyond each bound, 0.12% wide).';
+    expect(oneLine(ofRound(2, [first!, second]))).toContain(words);
+    expect(oneLine(ofRound(2, [second]))).toContain(words);
+    expect(ofRound(2, [second])).not.toContain('Rounds');
+  });
+});
+
 describe('doubt', () => {
   it('renders advice with its number and its remedy', () => {
     const text = textReport({ ...sampleRecord, advice: [sampleAdvice] });

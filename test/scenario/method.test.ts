@@ -6,8 +6,8 @@ import { marked, mistakes, modelOf, scenarioText } from './scenario-texts.js';
 const withMethod = (method: string) => scenarioText({ method: `method:\n${method}` });
 const methodOf = (method: string, overrides = {}) => modelOf(withMethod(method), overrides).method;
 
-test('widths in both units, with the default of half a percent', () => {
-  expect(modelOf(scenarioText()).method.bracketWidth).toEqual({ relative: 0.01 });
+test('widths in both units, with the default of a fifth of a percent', () => {
+  expect(modelOf(scenarioText()).method.bracketWidth).toEqual({ relative: 0.002 });
   expect(methodOf('  bracket width: { relative: 0.1% }').bracketWidth).toEqual({ relative: 0.001 });
   expect(methodOf('  bracket width: { relative: 0.002 }').bracketWidth).toEqual({ relative: 0.002 });
   expect(methodOf('  bracket width: { money: 0.02 }').bracketWidth).toEqual({ money: 0.02 });

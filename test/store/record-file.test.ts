@@ -64,17 +64,25 @@ describe('reading a plan', () => {
   });
 
   it('names everything that is missing', async () => {
-    const { innerPointCount: _, ...plan } = sampleRecord.plan;
+    const { innerPointCount: _, basisSize: __, round: ___, ...plan } = sampleRecord.plan;
     expect(codesAndWords(await planFrom({ title: 'no record' }))).toEqual([
       'record-invalid: is not a whole record: `schemaVersion` is missing.',
       'record-invalid: is not a whole record: `plan` is missing.',
     ]);
     expect(codesAndWords(await planFrom({ schemaVersion: 1, plan }))).toEqual([
+      'record-invalid: is not a whole record: `plan.basisSize` is missing.',
+      'record-invalid: is not a whole record: `plan.round` is missing.',
       'record-invalid: is not a whole record: `plan.innerPointCount` is missing.',
     ]);
   });
 
   it.each([
+    ['basisSize', -1],
+    ['basisSize', 0.5],
+    ['basisSize', null],
+    ['round', 0],
+    ['round', 1.5],
+    ['round', 'second'],
     ['fitPathCount', 0],
     ['fitPathCount', 1.5],
     ['outerPathCount', -1],

@@ -27,7 +27,7 @@ test('a thread that dies is replaced and its job done again, with the same resul
   const { context, run } = await fitted(lots(), 4096);
   const job: Job = {
     kind: 'outer',
-    work: { purpose: 'outer', pathCount: 512, innerPointCount: 1000 },
+    work: { purpose: 'outer', round: 1, pathCount: 512, innerPointCount: 1000 },
     range: { firstBlock: 0, blockCount: 1 },
   };
   const expected = run(job);
