@@ -37,6 +37,6 @@ export function selectionText(selection: SelectionFinding, money: string, width:
     },
     style,
   );
-  const meaning = `Each size was tried on paths that serve nothing else, the kept one on ${grouped(outerPathCount)}. Paths are those of the fit; the width is that of the bracket, in ${printable(money)}, that the cheapest counts for the wanted width are expected to bring. ${WHY_ENDED[ended]}`;
+  const meaning = `Each size was tried on paths that serve nothing else, the kept one on ${grouped(outerPathCount)}. Paths are those of the fit; the width is that of the bracket, in ${printable(money)}, that a run with it is expected to bring. ${WHY_ENDED[ended]}`;
   return `${table}\n\n${paragraph(meaning, width)}`;
 }
