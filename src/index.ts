@@ -5,7 +5,18 @@ import { thisMachine } from './workers/machine.js';
 
 export type { Message, Place, Severity } from './messages/message.js';
 export { renderMessages } from './messages/render.js';
-export type { BoundEstimate, Estimate, Forecast, PathsFinding, Plan, RunRecord } from './result/record.js';
+export type {
+  BoundEstimate,
+  Estimate,
+  Forecast,
+  PathsFinding,
+  Plan,
+  RoundFinding,
+  RunRecord,
+  SelectionFinding,
+  SizesEnded,
+  SizeTried,
+} from './result/record.js';
 export type {
   CheckOptions,
   CheckOutcome,
