@@ -34,6 +34,8 @@ export type CandidatesOutcome =
 
 /** Paths of the fit for each column, below which a size is not tried when the scenario fixes the paths. */
 const fewestPathsPerColumn = 250;
+/** Workers for which a larger size must find memory, however many there are: the choice must not depend on them. */
+const judgedWorkerCount = 8;
 /** The size that is taken where no paths are drawn to choose one. */
 const sizeWithoutChoice = 1;
 
@@ -65,7 +67,9 @@ export function openCandidates(
   for (let size = 1; size < smallest.basisSizeCount; size++) {
     const next = candidateOf(buildPrograms(model, size));
     const obstacle =
-      next.kind === 'refused' ? 'too little memory' : obstacleTo(next.candidate, method.fitPathCount, options);
+      next.kind === 'refused' || !findsMemory(next.candidate, environment)
+        ? 'too little memory'
+        : obstacleTo(next.candidate, method.fitPathCount, options);
     if (next.kind === 'refused' || obstacle !== null) {
       ended = obstacle!;
       break;
@@ -76,6 +80,11 @@ export function openCandidates(
   if (method.outerPathCount === null || method.innerPointCount === null) return { kind: 'open', candidates, ended };
   const size = method.fitPathCount === null ? sizeWithoutChoice : candidates.length - 1;
   return { kind: 'open', candidates: [candidates[Math.min(size, candidates.length - 1)]!], ended: null };
+}
+
+function findsMemory({ programs, counts, keeping }: Candidate, { memoryBytes }: Environment): boolean {
+  const { peakMemoryBytes } = forecastOf(programs, counts, keeping, judgedWorkerCount, memoryBytes);
+  return memoryBytes === null || peakMemoryBytes <= memoryBytes;
 }
 
 /** What keeps a size from being tried; null if nothing does. */
