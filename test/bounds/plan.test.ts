@@ -5,7 +5,7 @@ const model: PilotModel = {
   lowerStandardDeviation: 1,
   upperStandardDeviation: 1,
   limitGap: 0.05,
-  gapPerSquaredShare: 32,
+  gapPerInnerShare: 32,
   value: 14,
 };
 const request: PlanRequest = {
@@ -53,7 +53,7 @@ test('counts that the scenario fixes are kept', () => {
 });
 
 test('the effort grows without a cliff as the gap nears the wanted width', () => {
-  const spread = { ...model, gapPerSquaredShare: 0 };
+  const spread = { ...model, gapPerInnerShare: 0 };
   const effort = [];
   for (let limitGap = 0.02; limitGap < 0.2; limitGap += 0.002)
     effort.push(steps(chooseCounts({ ...spread, limitGap }, request)));
